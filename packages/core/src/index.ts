@@ -1,0 +1,75 @@
+/**
+ * The shared ground of the Staithe packages: instants, series, angles, units, constants documents, errors.
+ * @packageDocumentation
+ */
+export {
+  angleDifference,
+  type Degrees,
+  degreesToRadians,
+  radiansToDegrees,
+  wrapDegrees,
+} from './angles.js';
+export type {
+  ArgumentModel,
+  Finding,
+  HarmonicConstant,
+  HarmonicConstants,
+  NodalHold,
+  NodalModel,
+  Standing,
+} from './constants-document.js';
+export {
+  ComputationError,
+  type ComputationErrorCode,
+  describe,
+  type ErrorDetails,
+  InputError,
+  type InputErrorCode,
+  isStaitheError,
+} from './errors.js';
+export {
+  type AbortSignalLike,
+  type LongWork,
+  type Progress,
+  runInSlices,
+  runThrough,
+} from './long-work.js';
+export { parseConstants } from './parse-constants.js';
+export { fromGreenwichPhaseLag, type PhaseConvention, toGreenwichPhaseLag } from './phase-lag.js';
+export {
+  checkSeries,
+  fromJson,
+  type SampledSeries,
+  type Sampling,
+  sampledSeries,
+  type Series,
+  type SeriesJson,
+  seriesTimes,
+  toJson,
+  toTimes,
+  type UniformSeries,
+  uniformSeries,
+} from './series.js';
+export {
+  DAY,
+  EARLIEST,
+  formatInstant,
+  HOUR,
+  type Instant,
+  type InstantLike,
+  LATEST,
+  MINUTE,
+  SECOND,
+  type Span,
+  toInstant,
+  toSpan,
+  toStep,
+} from './time.js';
+export { atan2, cos, LARGEST_ANGLE, sin, sinCosInto } from './trig.js';
+export {
+  feetFromMetres,
+  knotsFromMetresPerSecond,
+  type Metres,
+  metresFromFeet,
+  metresPerSecondFromKnots,
+} from './units.js';

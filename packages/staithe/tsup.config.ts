@@ -1,0 +1,3 @@
+import { packageBuild } from '../../tools/build/tsup-preset.mjs';
+
+export default packageBuild();
