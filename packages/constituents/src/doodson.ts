@@ -1,0 +1,122 @@
+/**
+ * Doodson numbers and XDO letters: the written forms of the six multipliers of τ, s, h, p, N′, p_s.
+ *
+ * Source: A. T. Doodson (1921), Proc. R. Soc. A 100, 305-329 (digits, 5 added to all but the first);
+ * the extended form in letters (Z is 0, A is 1, Y is −1) with a seventh for the quarter turns: common practice.
+ * @module
+ */
+import { describe, InputError } from '@staithe/core';
+
+/** Multipliers of τ, s, h, p, N′, p_s. @public */
+export type DoodsonNumbers = readonly [number, number, number, number, number, number];
+
+const DIGITS = '0123456789ABCDEFGHIJKLMNOPQRSTUVWXYZ';
+
+/**
+ * Reads a Doodson number such as `255.555`; letters stand for 10 and beyond.
+ *
+ * @param text - Six digits or letters, a point after the third allowed.
+ * @returns The six multipliers.
+ * @throws InputError `BAD_NUMBER`, path `doodsonNumber`.
+ * @example
+ * parseDoodsonNumber('245.655'); // [2, -1, 0, 1, 0, 0]
+ * @public
+ */
+export function parseDoodsonNumber(text: string): DoodsonNumbers {
+  const digits = /^([0-9A-Z]{3})\.?([0-9A-Z]{3})$/.exec(text);
+  if (!digits) {
+    throw new InputError(
+      'BAD_NUMBER',
+      'doodsonNumber',
+      `expected six digits or letters like 255.555, got ${describe(text)}`,
+    );
+  }
+  const numbers = Array.from(
+    `${digits[1]}${digits[2]}`,
+    (c, i) => DIGITS.indexOf(c) - (i > 0 ? 5 : 0),
+  );
+  return numbers as unknown as DoodsonNumbers;
+}
+
+/**
+ * Writes a Doodson number.
+ *
+ * @param numbers - Six multipliers: the first 0 to 35, the others −5 to 30.
+ * @returns Text such as `255.555`.
+ * @throws InputError `OUT_OF_RANGE`, path `doodsonNumbers[i]`.
+ * @example
+ * formatDoodsonNumber([2, -1, 0, 1, 0, 0]); // '245.655'
+ * @public
+ */
+export function formatDoodsonNumber(numbers: DoodsonNumbers): string {
+  const text = numbers.map((n, i) => {
+    const digit = DIGITS[n + (i > 0 ? 5 : 0)];
+    if (digit) return digit;
+    throw new InputError(
+      'OUT_OF_RANGE',
+      `doodsonNumbers[${i}]`,
+      `expected a whole number from ${i > 0 ? '-5 to 30' : '0 to 35'}, got ${describe(n)}`,
+    );
+  });
+  return `${text.slice(0, 3).join('')}.${text.slice(3).join('')}`;
+}
+
+/**
+ * Reads XDO letters: six for the multipliers, and a seventh for the quarter turns.
+ *
+ * @param text - Six or seven letters; Z is 0, A to P are 1 to 16, Y to Q are −1 to −9. The first, the species, is
+ *   never negative: there A to Y are 1 to 25.
+ * @returns The multipliers and the quarter turns (0 where the seventh letter is absent).
+ * @throws InputError `BAD_NUMBER`, path `xdo`.
+ * @example
+ * parseXdo('AYZZZZY').quarterTurns; // -1
+ * @public
+ */
+export function parseXdo(text: string): {
+  readonly doodsonNumbers: DoodsonNumbers;
+  readonly quarterTurns: number;
+} {
+  if (!/^[A-Z]{6,7}$/.test(text)) {
+    throw new InputError(
+      'BAD_NUMBER',
+      'xdo',
+      `expected six or seven letters, got ${describe(text)}`,
+    );
+  }
+  const values = Array.from(text, (letter, i) => {
+    const place = letter === 'Z' ? 0 : letter.charCodeAt(0) - 64;
+    return i > 0 && place > 16 ? place - 26 : place;
+  });
+  const doodsonNumbers = values.slice(0, 6) as unknown as DoodsonNumbers;
+  return { doodsonNumbers, quarterTurns: values[6] ?? 0 };
+}
+
+/**
+ * Writes XDO letters.
+ *
+ * @param constituent - Six multipliers (the first 0 to 25, the others −9 to 16) and quarter turns.
+ * @returns Seven letters.
+ * @throws InputError `OUT_OF_RANGE`, path `doodsonNumbers[i]` or `quarterTurns`.
+ * @example
+ * formatXdo({ doodsonNumbers: [1, 1, 0, 0, 0, 0], quarterTurns: 1 }); // 'AAZZZZA'
+ * @public
+ */
+export function formatXdo(constituent: {
+  readonly doodsonNumbers: DoodsonNumbers;
+  readonly quarterTurns: number;
+}): string {
+  const values = [...constituent.doodsonNumbers, constituent.quarterTurns];
+  const letters = values.map((n, i) => {
+    if (Number.isInteger(n) && (i === 0 ? n >= 0 && n <= 25 : n >= -9 && n <= 16)) {
+      return n === 0 ? 'Z' : String.fromCharCode(n > 0 ? 64 + n : 90 + n);
+    }
+    const path = i < 6 ? `doodsonNumbers[${i}]` : 'quarterTurns';
+    const range = i === 0 ? '0 to 25' : '-9 to 16';
+    throw new InputError(
+      'OUT_OF_RANGE',
+      path,
+      `expected a whole number from ${range}, got ${describe(n)}`,
+    );
+  });
+  return letters.join('');
+}
