@@ -3,13 +3,12 @@
  * @module
  */
 import {
-  cos,
   type Degrees,
   degreesToRadians,
   describe,
   InputError,
   type NodalModel,
-  sin,
+  sinCosInto,
   wrapDegrees,
 } from '@staithe/core';
 import { type Constituent, constituent, potentialLines } from '@staithe/constituents';
@@ -107,10 +106,12 @@ function rulePhasor(
   { formula, lines }: NodalRule,
   perigee: Degrees,
   nPrime: Degrees,
+  pair: Float64Array,
 ): readonly [number, number] {
   if (formula !== undefined) {
     const [f, u] = schuremanPair(formula, perigee, -nPrime);
-    return [f * cos(u), f * sin(u)];
+    sinCosInto(u, pair);
+    return [f * (pair[1] as number), f * (pair[0] as number)];
   }
   let re = 0;
   let im = 0;
@@ -120,8 +121,9 @@ function rulePhasor(
       (rows[i] as number) * perigee + (rows[i + 1] as number) * nPrime + (rows[i + 3] as number),
     );
     const ratio = rows[i + 2] as number;
-    re += ratio * cos(angle);
-    im += ratio * sin(angle);
+    sinCosInto(angle, pair);
+    re += ratio * (pair[1] as number);
+    im += ratio * (pair[0] as number);
   }
   return [re, im];
 }
@@ -145,8 +147,9 @@ export function nodalPhasorsInto(
   nPrime: Degrees,
   out: Float64Array,
 ): void {
+  const pair = new Float64Array(2);
   const phasors = plan.rules.map((rule) =>
-    rulePhasor(rule, wrapDegrees(perigee), wrapDegrees(nPrime)),
+    rulePhasor(rule, wrapDegrees(perigee), wrapDegrees(nPrime), pair),
   );
   plan.factors.forEach((factors, k) => {
     let re = 1;
