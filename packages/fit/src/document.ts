@@ -1,0 +1,120 @@
+/**
+ * The constants document of a fit.
+ * @module
+ */
+import {
+  atan2,
+  formatInstant,
+  type HarmonicConstant,
+  type HarmonicConstants,
+  radiansToDegrees,
+  wrapDegrees,
+} from '@staithe/core';
+import { type Design, headCount } from './design.js';
+import { pairErrors } from './errors-of.js';
+import type { FitRecord } from './record.js';
+import type { FitOptions } from './types.js';
+
+/** The constants, fitted and borrowed. */
+export function constantsOf(
+  design: Design,
+  solution: Float64Array,
+  covariance: Float64Array,
+): HarmonicConstant[] {
+  const count = design.order.length;
+  const head = headCount(design);
+  const { names } = design.basis;
+  const fitted: HarmonicConstant[] = [];
+  for (let j = 0; j < design.fitted; j++) {
+    const at = head + 2 * j;
+    const [a, b] = [solution[at] as number, solution[at + 1] as number];
+    const read = (row: number, column: number): number =>
+      covariance[(at + row) * count + at + column] as number;
+    const { amplitudeSigma, phaseSigma, radius95 } = pairErrors(
+      a,
+      b,
+      read(0, 0),
+      read(0, 1),
+      read(1, 1),
+    );
+    const amplitude = Math.sqrt(a * a + b * b);
+    fitted.push({
+      name: names[j] as string,
+      amplitude,
+      phaseLag: wrapDegrees(radiansToDegrees(atan2(b, a))),
+      amplitudeSigma,
+      phaseLagSigma: radiansToDegrees(phaseSigma),
+      radius95,
+      standing: amplitude > radius95 ? 'firm' : 'faint',
+    });
+  }
+  const borrowed = design.folds.map(({ child, parent, ratio, difference }): HarmonicConstant => {
+    const from = fitted[parent] as HarmonicConstant;
+    return {
+      name: names[child] as string,
+      amplitude: ratio * from.amplitude,
+      phaseLag: wrapDegrees(from.phaseLag + difference),
+      amplitudeSigma: ratio * (from.amplitudeSigma as number),
+      phaseLagSigma: from.phaseLagSigma,
+      radius95: ratio * (from.radius95 as number),
+      standing: 'borrowed',
+      borrowedFrom: from.name,
+    };
+  });
+  return [...fitted, ...borrowed];
+}
+
+/** The middle of a record as text: where the secular rate counts from and f and u are held. */
+export function middleOf(record: FitRecord): string {
+  return formatInstant(Math.round((record.from + record.to) / 2));
+}
+
+export function documentOf(
+  design: Design,
+  record: FitRecord,
+  options: FitOptions,
+  solution: Float64Array,
+  covariance: Float64Array,
+): HarmonicConstants {
+  const { place, datum, source, nodalHold } = options;
+  const nodalModel = options.nodalModel ?? 'potential';
+  const count = design.order.length;
+  const rated = design.rateFrom !== undefined;
+  const packed: number[] = [];
+  for (let i = 0; i < count; i++)
+    for (let j = 0; j <= i; j++) packed.push(covariance[i * count + j] as number);
+  return {
+    format: 'staithe-constants',
+    version: 1,
+    unit: 'm',
+    ...(place ? { place } : {}),
+    ...(datum === undefined ? {} : { datum }),
+    meanLevel: solution[0] as number,
+    ...(rated
+      ? { secularRate: { metresPerYear: solution[1] as number, at: middleOf(record) } }
+      : {}),
+    ...(design.steps.length > 0
+      ? {
+          steps: design.steps.map((at, i) => ({
+            at: formatInstant(at),
+            change: solution[(rated ? 2 : 1) + i] as number,
+          })),
+        }
+      : {}),
+    argumentModel: options.argumentModel ?? 'iers2010',
+    nodalModel,
+    ...(nodalHold === 'calendar-year' ? { nodalHold } : {}),
+    ...(nodalHold === 'span-middle' ? { nodalHold: { heldAt: middleOf(record) } } : {}),
+    ...(nodalModel === 'potential' && place?.latitude !== undefined
+      ? { nodalLatitude: place.latitude }
+      : {}),
+    constituents: constantsOf(design, solution, covariance),
+    uncertainty: { order: design.order, covariance: packed },
+    ...(source === undefined ? {} : { source }),
+    record: {
+      from: formatInstant(record.from),
+      to: formatInstant(record.to),
+      samples: record.samples,
+    },
+  };
+}

@@ -1,0 +1,306 @@
+/**
+ * The harmonic fit of a record by least squares: constants, error bars and the grounds for each of them.
+ *
+ * h(t) = Z₀ + rate·t + Σ steps + Σ f·H·cos(V + u − G) + noise, all in one problem, borrowed constituents inside it.
+ * @module
+ */
+import { type Basis, makeBasis } from '@staithe/basis';
+import type { Constituent } from '@staithe/constituents';
+import {
+  ComputationError,
+  type LongWork,
+  type Progress,
+  runInSlices,
+  runThrough,
+  type Series,
+  toInstant,
+} from '@staithe/core';
+import { type Design, makeDesign } from './design.js';
+import { documentOf, middleOf } from './document.js';
+import { covarianceOf, noiseOf } from './errors-of.js';
+import type { LineNoise } from './noise.js';
+import { normalEquations, residualsOf } from './normal.js';
+import { type Borrowed, readBorrowings, readChoice, readSteps } from './read-options.js';
+import { type FitRecord, readRecord } from './record.js';
+import { closePairs, type Selection, select } from './select.js';
+import { cholesky, inverseGram, type Scaled, scaleGram, solveScaled, spectrumOf } from './solve.js';
+import type { Candidate, FitOptions, FitWarning, HarmonicFit } from './types.js';
+
+// Smallest over largest eigenvalue of the scaled Gram matrix: below, the columns cannot be told apart.
+const REFUSED = 1e-10;
+const DROPPED = 1e-4; // where the choice is ours, a poorer one is not made
+const POOR = 1e4; // condition of the design that is worth a word
+const GAPS = 0.3;
+const REFINEMENTS = 2;
+
+function designOf(
+  taken: readonly Constituent[],
+  borrowed: readonly Borrowed[],
+  record: FitRecord,
+  options: FitOptions,
+): Design {
+  const nodalHold = readChoice(options.nodalHold, 'options.nodalHold', [
+    'continuous',
+    'span-middle',
+    'calendar-year',
+  ]);
+  const nodalModel = options.nodalModel ?? 'potential';
+  const basis: Basis = makeBasis({
+    constituents: [...taken, ...borrowed.map(({ of }) => of)],
+    argumentModel: options.argumentModel,
+    nodalModel,
+    nodalHold: nodalHold === 'span-middle' ? { heldAt: middleOf(record) } : nodalHold,
+    nodalLatitude: nodalModel === 'potential' ? options.place?.latitude : undefined,
+    sampling: record.series.sampling,
+  });
+  const folds = borrowed.map(({ parent, rule }, i) => ({
+    child: taken.length + i,
+    parent: taken.findIndex(({ name }) => name === parent.name),
+    ratio: rule.amplitudeRatio,
+    difference: rule.phaseLagDifference,
+  }));
+  const rateFrom = options.secularRate ? toInstant(middleOf(record)) : undefined;
+  return makeDesign(
+    basis,
+    taken.length,
+    folds,
+    rateFrom,
+    readSteps(options.steps, record.from, record.to),
+  );
+}
+
+/** The two names that weigh most in the weakest direction of the design. */
+function weakestPair(order: readonly string[], weakest: readonly number[]): string[] {
+  const weights = new Map<string, number>();
+  order.forEach((column, i) => {
+    const name = column.replace(/\.(cos|sin)$/, '');
+    weights.set(name, (weights.get(name) ?? 0) + (weakest[i] as number) * (weakest[i] as number));
+  });
+  return [...weights]
+    .sort((a, b) => b[1] - a[1])
+    .slice(0, 2)
+    .map(([name]) => name);
+}
+
+interface Solvable {
+  readonly design: Design;
+  readonly selection: Selection;
+  readonly normal: Float64Array;
+  readonly scaled: Scaled;
+  readonly condition: number;
+}
+
+/** Normal equations that can be solved: the caller's list or a refusal, or our own choice thinned until it is sound. */
+function* solvable(
+  record: FitRecord,
+  options: FitOptions,
+  borrowed: readonly Borrowed[],
+): Generator<Progress, Solvable, void> {
+  let selection = select(options, record, borrowed);
+  const ours = options.constituents === undefined || options.constituents === 'resolvable';
+  for (;;) {
+    const design = designOf(selection.taken, borrowed, record, options);
+    const count = design.order.length;
+    if (record.samples <= count || (ours && selection.taken.length === 0)) {
+      const wanted =
+        ours && selection.taken.length === 0
+          ? 'a record that holds one turn of a constituent'
+          : `more than ${count} samples for ${count} unknowns`;
+      throw new ComputationError(
+        'TOO_FEW_SAMPLES',
+        `expected ${wanted}, got ${record.samples} samples over ${record.days.toFixed(3)} days`,
+        {
+          samples: record.samples,
+          unknowns: count,
+          days: record.days,
+          candidates: selection.candidates,
+        },
+      );
+    }
+    const normal = yield* normalEquations(design, record);
+    const scaled = scaleGram(normal, count, count + 1);
+    const { values, weakest } = spectrumOf(scaled);
+    const ratio = (values[0] as number) / (values[count - 1] as number);
+    const pair = weakestPair(design.order, weakest);
+    // The list is in order of expected size: the smaller of the two goes.
+    const name = selection.taken.filter((of) => pair.includes(of.name)).pop()?.name;
+    if (ours && ratio < DROPPED && name !== undefined) {
+      const beside = pair.find((one) => one !== name) as string;
+      const reason = `cannot be told from ${beside} with these gaps and this sampling`;
+      const left: Candidate = { name, decision: 'left', reason, beside };
+      selection = {
+        taken: selection.taken.filter((of) => of.name !== name),
+        candidates: [...selection.candidates.filter((c) => c.name !== name), left],
+      };
+      continue;
+    }
+    if (!(ratio >= REFUSED)) {
+      throw new ComputationError(
+        'RANK_DEFICIENT',
+        `expected columns that can be told apart, got ${pair.join(' and ')} alike in this record`,
+        { pair, ratio, unknowns: count },
+      );
+    }
+    return { design, selection, normal, scaled, condition: Math.sqrt(1 / ratio) };
+  }
+}
+
+function warningsOf(
+  record: FitRecord,
+  { design, selection, condition }: Solvable,
+  noise: readonly LineNoise[],
+  ours: boolean,
+): FitWarning[] {
+  const { length } = record.values;
+  const missing = length - record.samples;
+  const few = noise.filter(({ bins }) => bins > 0 && bins < 4).length;
+  const list: (FitWarning | false)[] = [
+    record.days < 27 && {
+      code: 'SHORT_RECORD',
+      message: `${record.days.toFixed(1)} days: less than a month, in which the Moon passes all its positions`,
+    },
+    missing > GAPS * length && {
+      code: 'MANY_GAPS',
+      message: `${missing} of ${length} samples are missing`,
+    },
+    condition > POOR && {
+      code: 'POORLY_CONDITIONED',
+      message: `condition of the design ${condition.toExponential(1)}: errors of some constants are large and correlated`,
+    },
+    few > 0 && {
+      code: 'FEW_SPECTRUM_BINS',
+      message: `${few} error bars rest on fewer than 4 bins of the residual's spectrum`,
+    },
+  ];
+  const weak = design.basis.nodal.leftOut;
+  if (weak.length > 0) {
+    list.push({
+      code: 'WEAK_DEGREE_2',
+      message: `lines of degree 3 left out for ${weak.join(', ')}: degree 2 is under 5 % of its maximum at this latitude`,
+    });
+  }
+  const close = ours ? [] : closePairs(selection.taken, record.days);
+  return [...list.filter((w): w is FitWarning => w !== false), ...close];
+}
+
+function* fitSteps(series: Series, options: FitOptions): Generator<Progress, HarmonicFit, void> {
+  const errorModel = readChoice(options.errorModel, 'options.errorModel', [
+    'residual-spectrum',
+    'independent',
+  ]);
+  const record = readRecord(series);
+  const borrowed = readBorrowings(options.borrow);
+  const ready = yield* solvable(record, options, borrowed);
+  const { design, selection, normal, scaled, condition } = ready;
+  const count = design.order.length;
+  const factor = cholesky(scaled);
+  if (!factor) {
+    throw new ComputationError(
+      'RANK_DEFICIENT',
+      'expected a positive definite Gram matrix, got none',
+      { condition },
+    );
+  }
+  const solution = solveScaled(
+    factor,
+    scaled,
+    normal.slice(count * (count + 1), count * (count + 1) + count),
+  );
+  let last = yield* residualsOf(design, record, solution);
+  for (let i = 0; i < REFINEMENTS; i++) {
+    const correction = solveScaled(factor, scaled, last.projection);
+    correction.forEach((value, k) => {
+      solution[k] = (solution[k] as number) + value;
+    });
+    last = yield* residualsOf(design, record, solution);
+  }
+  let sum = 0;
+  let largestAt = 0;
+  last.residuals.forEach((value, i) => {
+    if (Number.isNaN(value)) return;
+    sum += value * value;
+    if (!(Math.abs(value) <= Math.abs(last.residuals[largestAt] as number))) largestAt = i;
+  });
+  const variance = sum / (record.samples - count);
+  const noise = yield* noiseOf(design, record, last.residuals, errorModel, variance);
+  const covariance = covarianceOf(design, inverseGram(factor, scaled), noise);
+  const names = ['meanLevel', ...design.basis.names];
+  return {
+    constants: documentOf(design, record, options, solution, covariance),
+    covariance: { order: design.order, matrix: covariance },
+    residuals: { ...record.series, values: last.residuals } as Series,
+    diagnostics: {
+      samples: record.samples,
+      missing: record.values.length - record.samples,
+      from: record.from,
+      to: record.to,
+      days: record.days,
+      candidates: [
+        ...selection.candidates,
+        ...borrowed.map(
+          ({ of, parent, rule }): Candidate => ({
+            name: of.name,
+            decision: 'borrowed',
+            reason: `${rule.amplitudeRatio} of ${parent.name}, ${rule.phaseLagDifference}° behind it`,
+            beside: parent.name,
+          }),
+        ),
+      ],
+      unknowns: count,
+      rank: count,
+      condition,
+      residual: {
+        rms: Math.sqrt(sum / record.samples),
+        largest: Math.abs(last.residuals[largestAt] as number),
+        largestAt: record.times[largestAt] as number,
+      },
+      noise: noise.map(({ density, bins }, i) => ({
+        name: names[i] as string,
+        sigma: Math.sqrt(density),
+        bins,
+      })),
+      effectiveSamples: Math.min(record.samples, sum / (noise[0] as LineNoise).density),
+    },
+    warnings: warningsOf(
+      record,
+      ready,
+      noise,
+      options.constituents === undefined || options.constituents === 'resolvable',
+    ),
+  };
+}
+
+/**
+ * Fits harmonic constants to a record.
+ *
+ * @param series - Metres; NaN is a gap. `sampling`, where stated, is taken into account.
+ * @param options - See {@link FitOptions}.
+ * @returns Constants with errors, covariance, residuals, diagnostics, warnings.
+ * @throws InputError of `checkSeries`, `constituent`, `makeBasis`; `DUPLICATE`, `CONFLICT`, `MISSING`, `OUT_OF_RANGE`,
+ *   `UNKNOWN_CHOICE` with the path of the option. ComputationError `TOO_FEW_SAMPLES`, `NO_TIDE`, or `RANK_DEFICIENT` with
+ *   the pair that cannot be told apart.
+ * @example
+ * fitHarmonics(record, { constituents: ['M2', 'S2'] }).constants.constituents[0]?.name; // 'M2'
+ * @public
+ */
+export function fitHarmonics(series: Series, options: FitOptions = {}): HarmonicFit {
+  return runThrough(fitSteps(series, options));
+}
+
+/**
+ * {@link fitHarmonics} in slices: shows its progress, can be aborted, never blocks the host for long.
+ *
+ * @param series - As there.
+ * @param options - As there, and signal and progress.
+ * @returns The same; rejects with `signal.reason` after an abort.
+ * @throws As there, by rejection.
+ * @example
+ * (await fitHarmonicsAsync(record, { constituents: ['M2', 'S2'] })).diagnostics.unknowns; // 5
+ * @public
+ */
+export function fitHarmonicsAsync(
+  series: Series,
+  options: FitOptions & LongWork = {},
+): Promise<HarmonicFit> {
+  return runInSlices(fitSteps(series, options), options);
+}

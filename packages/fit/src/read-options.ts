@@ -1,0 +1,99 @@
+/**
+ * Options of a fit, checked and resolved against the record.
+ * @module
+ */
+import { type Constituent, type ConstituentName, constituent } from '@staithe/constituents';
+import { describe, InputError, type Instant, isStaitheError, toInstant } from '@staithe/core';
+import type { Borrowing, FitOptions } from './types.js';
+
+/** A constituent by name, with the caller's path in the error. */
+export function namedAt(name: ConstituentName, path: string): Constituent {
+  try {
+    return constituent(name);
+  } catch (error) {
+    if (!isStaitheError(error) || !(error instanceof InputError)) throw error;
+    throw new InputError(
+      error.code,
+      path,
+      error.message.replace(/^constituent: /, ''),
+      error.details,
+    );
+  }
+}
+
+/** A borrowing with its constituents looked up. */
+export interface Borrowed {
+  readonly of: Constituent;
+  readonly parent: Constituent;
+  readonly rule: Borrowing;
+}
+
+/** Looks the borrowings up; a child has one parent, and a parent is no child. */
+export function readBorrowings(borrow: FitOptions['borrow']): Borrowed[] {
+  const out = (borrow ?? []).map((rule, i) => {
+    const path = `options.borrow[${i}]`;
+    if (!(rule.amplitudeRatio >= 0 && rule.amplitudeRatio < Infinity)) {
+      throw new InputError(
+        'OUT_OF_RANGE',
+        `${path}.amplitudeRatio`,
+        `expected a finite number, 0 or more, got ${describe(rule.amplitudeRatio)}`,
+      );
+    }
+    if (!Number.isFinite(rule.phaseLagDifference)) {
+      throw new InputError(
+        'NOT_FINITE',
+        `${path}.phaseLagDifference`,
+        `expected degrees, got ${describe(rule.phaseLagDifference)}`,
+      );
+    }
+    return {
+      of: namedAt(rule.name, `${path}.name`),
+      parent: namedAt(rule.from, `${path}.from`),
+      rule,
+    };
+  });
+  out.forEach(({ of, parent }, i) => {
+    const path = `options.borrow[${i}]`;
+    if (out.findIndex((other) => other.of.name === of.name) !== i) {
+      throw new InputError('DUPLICATE', `${path}.name`, `expected each once, got ${of.name} again`);
+    }
+    if (out.some((other) => other.of.name === parent.name)) {
+      throw new InputError(
+        'CONFLICT',
+        `${path}.from`,
+        `expected a fitted parent, got ${parent.name}, which is borrowed`,
+      );
+    }
+  });
+  return out;
+}
+
+/** Steps in order, each inside the record. */
+export function readSteps(steps: FitOptions['steps'], from: Instant, to: Instant): Instant[] {
+  return (steps ?? [])
+    .map((step, i) => {
+      const at = toInstant(step, `options.steps[${i}]`);
+      if (at > from && at <= to) return at;
+      throw new InputError(
+        'OUT_OF_RANGE',
+        `options.steps[${i}]`,
+        `expected within the record (${from} to ${to}), got ${at}`,
+      );
+    })
+    .sort((a, b) => a - b);
+}
+
+/** A closed choice. */
+export function readChoice<T extends string>(
+  value: T | undefined,
+  path: string,
+  choices: readonly T[],
+): T {
+  const chosen = value ?? (choices[0] as T);
+  if (choices.includes(chosen)) return chosen;
+  throw new InputError(
+    'UNKNOWN_CHOICE',
+    path,
+    `expected ${choices.join(' or ')}, got ${describe(value)}`,
+  );
+}
