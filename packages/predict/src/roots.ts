@@ -24,7 +24,12 @@ const SHORTEST = 0.25; // ms, half width
 const POLISHED = 0.005; // ms
 
 /** Zero counts as positive, everywhere. */
-export const signOf = (value: number): 1 | -1 => (value >= 0 ? 1 : -1);
+const signOf = (value: number): 1 | -1 => (value >= 0 ? 1 : -1);
+
+/** The sign of a value; within rounding of zero the sign before it, so that noise makes no roots. */
+export function certainSign(value: number, tolerance: number, before: 1 | -1 | undefined): 1 | -1 {
+  return before !== undefined && Math.abs(value) <= tolerance ? before : signOf(value);
+}
 
 /** Newton within a bracket whose ends differ in sign. */
 function polish({ read }: Ground, a: number, b: number, signA: 1 | -1, out: Float64Array): number {
@@ -68,7 +73,7 @@ export function findRoots(
   ground.read(out, m);
   const f = Math.abs(out[0] as number);
   const slope = Math.abs(out[1] as number);
-  const signM = signOf(out[0] as number);
+  const signM = certainSign(out[0] as number, ground.tolerance, signA);
   const curl = (ground.bound * r * r) / 2;
   if (f > slope * r + curl && signA === signB) return;
   const monotone = slope > ground.bound * r;

@@ -8,7 +8,7 @@
 import { HOUR, type Instant } from '@staithe/core';
 import { boundsOf, type Cursor, makeCursor, type Piece } from './cursor.js';
 import type { TidePlan } from './plan.js';
-import { findRoots, type Ground, signOf } from './roots.js';
+import { certainSign, findRoots, type Ground } from './roots.js';
 
 const CELL = HOUR;
 
@@ -96,6 +96,8 @@ export function walk(
   const end = Math.ceil((to + 1) / CELL) * CELL;
   let piece = cursor.pieceAt(Math.floor((from - 1) / CELL) * CELL);
   let t = Math.floor((from - 1) / CELL) * CELL;
+  let last: 1 | -1 | undefined;
+  let jumped = false;
   while (t < end) {
     const here = piece;
     const ground = groundOf(cursor, here, quest);
@@ -103,7 +105,7 @@ export function walk(
     const close = cells[cells.length - 1] as number;
     const next = cursor.pieceAt(close);
     ground.read(out, cells[0] as number);
-    let signA = signOf(out[0] as number);
+    let signA = certainSign(out[0] as number, ground.tolerance, jumped ? undefined : last);
     for (let i = 1; i < cells.length; i++) {
       const a = cells[i - 1] as number;
       const b = cells[i] as number;
@@ -112,7 +114,7 @@ export function walk(
       const reader = joined ? groundOf(cursor, next, quest) : ground;
       // Just before a step of the level the curve is still on the old one.
       reader.read(out, jump ? b - 2 ** -10 : b);
-      const signB = signOf(out[0] as number);
+      const signB = certainSign(out[0] as number, ground.tolerance, signA);
       findRoots(ground, a, b, signA, signB, out, (root, before) => {
         const instant = Math.round(root);
         if (instant < from || instant >= to) return;
@@ -121,9 +123,11 @@ export function walk(
       });
       if (jump) {
         ground.read(out, b);
-        signA = signOf(out[0] as number);
+        signA = certainSign(out[0] as number, ground.tolerance, undefined);
       } else signA = signB;
     }
+    last = signA;
+    jumped = here.stretch.jumps;
     t = close;
     piece = next;
   }
