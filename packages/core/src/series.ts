@@ -188,7 +188,7 @@ export function seriesTimes(series: Series): Float64Array {
  * @public
  */
 export function checkSeries(series: Series): Series {
-  if (!(series as Series | undefined)?.values) {
+  if (!ArrayBuffer.isView((series as Series | undefined)?.values)) {
     throw new InputError('WRONG_TYPE', 'series', `expected a series, got ${describe(series)}`);
   }
   return series.times ? sampledSeries(series) : uniformSeries(series);

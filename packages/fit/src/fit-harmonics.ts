@@ -277,7 +277,7 @@ function* fitSteps(series: Series, options: FitOptions): Generator<Progress, Har
  * @param options - See {@link FitOptions}.
  * @returns Constants with errors, covariance, residuals, diagnostics, warnings.
  * @throws InputError of `checkSeries`, `constituent`, `makeBasis`; `DUPLICATE`, `CONFLICT`, `MISSING`, `OUT_OF_RANGE`,
- *   `UNKNOWN_CHOICE` with the path of the option. ComputationError `TOO_FEW_SAMPLES`, `NO_TIDE`, or `RANK_DEFICIENT` with
+ *   `UNKNOWN_CHOICE`, `INSEPARABLE` with the path of the option. ComputationError `TOO_FEW_SAMPLES`, `NO_TIDE`, or `RANK_DEFICIENT` with
  *   the pair that cannot be told apart.
  * @example
  * fitHarmonics(record, { constituents: ['M2', 'S2'] }).constants.constituents[0]?.name; // 'M2'

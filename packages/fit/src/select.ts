@@ -16,14 +16,20 @@ export interface Selection {
 }
 
 const CLOSE = 0.5; // turns apart within the record
+const SAME = 1e-9; // degrees an hour
 
 /** The caller's list; parents must be in it, borrowed ones must not. */
 function obey(names: readonly string[], borrowed: readonly Borrowed[]): Selection {
   const taken = names.map((name, i) => namedAt(name, `options.constituents[${i}]`));
-  taken.forEach(({ name }, i) => {
+  taken.forEach(({ name, speed }, i) => {
     const path = `options.constituents[${i}]`;
     if (taken.findIndex((other) => other.name === name) !== i) {
       throw new InputError('DUPLICATE', path, `expected each once, got ${name} again`);
+    }
+    const twin = taken.slice(0, i).find((other) => Math.abs(other.speed - speed) < SAME);
+    if (twin) {
+      const text = `expected speeds that differ, got ${twin.name} and ${name} at ${speed.toFixed(7)} degrees an hour`;
+      throw new InputError('INSEPARABLE', path, text, { pair: [twin.name, name] });
     }
     if (borrowed.some(({ of }) => of.name === name)) {
       throw new InputError(
