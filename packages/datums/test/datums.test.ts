@@ -1,0 +1,239 @@
+import {
+  ComputationError,
+  type HarmonicConstants,
+  HOUR,
+  InputError,
+  isStaitheError,
+  MINUTE,
+  type Series,
+  uniformSeries,
+} from '@staithe/core';
+import { heightsOnGrid, makePlan, tideCurve } from '@staithe/predict';
+import { expectWithin } from '@staithe/test-vectors';
+import { describe, expect, it } from 'vitest';
+import { astronomicalTideLimits, harmonicLevels, tabulateTide, tidalDatums } from '../src/index.js';
+
+const quay: HarmonicConstants = {
+  format: 'staithe-constants',
+  version: 1,
+  unit: 'm',
+  meanLevel: 2.5,
+  argumentModel: 'iers2010',
+  nodalModel: 'potential',
+  constituents: [
+    { name: 'M2', amplitude: 1.5, phaseLag: 140 },
+    { name: 'S2', amplitude: 0.5, phaseLag: 185 },
+    { name: 'N2', amplitude: 0.3, phaseLag: 120 },
+    { name: 'K1', amplitude: 0.1, phaseLag: 20 },
+    { name: 'O1', amplitude: 0.08, phaseLag: 350 },
+  ],
+};
+
+function with_(names: Record<string, number>): HarmonicConstants {
+  return {
+    ...quay,
+    constituents: Object.entries(names).map(([name, amplitude]) => ({
+      name,
+      amplitude,
+      phaseLag: 0,
+    })),
+  };
+}
+
+function refusal(run: () => unknown): InputError | ComputationError {
+  try {
+    run();
+  } catch (error) {
+    if (isStaitheError(error)) return error;
+    throw error;
+  }
+  throw new Error('expected a refusal');
+}
+
+describe('harmonicLevels', () => {
+  it('follow from the constants (textbook relations)', () => {
+    const { levels, absent, formFactor, tideClass, ranges } = harmonicLevels(quay);
+    expect(levels).toEqual({
+      MSL: 2.5,
+      MHWS: 4.5,
+      MHWN: 3.5,
+      MLWN: 1.5,
+      MLWS: 0.5,
+      ISLW: 2.5 - 2.18,
+    });
+    expectWithin(formFactor as number, 0.09, { abs: 1e-12 });
+    expect(tideClass).toBe('semidiurnal');
+    expect(ranges).toEqual({ spring: 4, neap: 2 });
+    expect(absent.map(({ level }) => level)).toEqual(['MHHW', 'MLLW']);
+  });
+
+  it('ages are phase differences over differences of speed, the short way round', () => {
+    const { ages } = harmonicLevels(quay);
+    expectWithin(ages.phase as number, 45 / 1.0158958, { abs: 1e-5 });
+    expectWithin(ages.parallax as number, 20 / 0.5443747, { abs: 1e-4 });
+    expectWithin(ages.diurnal as number, 30 / 1.0980331, { abs: 1e-5 });
+  });
+
+  it.each([
+    [{ M2: 1, S2: 0.5, K1: 0.2, O1: 0.175 }, 'semidiurnal'],
+    [{ M2: 1, S2: 0.5, K1: 0.8, O1: 0.7 }, 'mixed, mainly semidiurnal'],
+    [{ M2: 0.5, S2: 0.1, K1: 0.8, O1: 0.7 }, 'mixed, mainly diurnal'],
+    [{ M2: 0.1, S2: 0.05, K1: 0.8, O1: 0.7 }, 'diurnal'],
+  ])('%o is %s', (names, expected) => {
+    expect(harmonicLevels(with_(names)).tideClass).toBe(expected);
+  });
+
+  it('give no springs for a diurnal tide, and say why', () => {
+    const { levels, absent } = harmonicLevels(with_({ M2: 0.1, S2: 0.05, K1: 0.8, O1: 0.7 }));
+    expect(levels.MHWS).toBeUndefined();
+    expectWithin(levels.MHHW as number, 2.5 + 1.6, { abs: 1e-12 });
+    expect(absent.find(({ level }) => level === 'MHWS')?.reason).toContain(
+      'form number 10.00 is over 1.5',
+    );
+    const poor = harmonicLevels(with_({ M2: 1 }));
+    expect(poor.absent.find(({ level }) => level === 'MHWS')?.reason).toBe(
+      'the constants hold no S2',
+    );
+    expect(poor.absent.find(({ level }) => level === 'ISLW')?.reason).toBe(
+      'the constants hold no S2 and no K1 and no O1',
+    );
+  });
+});
+
+describe('astronomicalTideLimits', () => {
+  it('are the extremes of the curve, year by year', () => {
+    const { HAT, LAT, years } = astronomicalTideLimits(quay);
+    expect(years.map(({ year }) => year)).toEqual(Array.from({ length: 19 }, (_, i) => 2020 + i));
+    expect(Math.max(...years.map(({ highest }) => highest.height))).toBe(HAT.height);
+    expect(Math.min(...years.map(({ lowest }) => lowest.height))).toBe(LAT.height);
+    expectWithin(tideCurve(quay).height(HAT.time), HAT.height, { abs: 1e-9 });
+    const hours = heightsOnGrid(makePlan(quay), {
+      start: '2020-01-01T00:00Z',
+      step: HOUR,
+      count: 6940 * 24,
+    }).values;
+    expect(hours.reduce((a, b) => Math.max(a, b), -Infinity)).toBeLessThanOrEqual(HAT.height);
+  });
+
+  it('leave secular rate and steps out', () => {
+    const risen = {
+      ...quay,
+      secularRate: { metresPerYear: 0.1, at: '2000-01-01T00:00Z' },
+      steps: [{ at: '2010-01-01T00:00Z', change: 5 }],
+    };
+    expect(astronomicalTideLimits(risen).HAT).toEqual(astronomicalTideLimits(quay).HAT);
+  });
+
+  it('refuse less than 19 years and a flat curve', () => {
+    const short = refusal(() =>
+      astronomicalTideLimits(quay, {
+        span: { from: '2020-01-01T00:00Z', to: '2038-12-01T00:00Z' },
+      }),
+    );
+    expect(short instanceof InputError ? [short.code, short.path] : []).toEqual([
+      'OUT_OF_RANGE',
+      'options.span',
+    ]);
+    expect(refusal(() => astronomicalTideLimits({ ...quay, constituents: [] })).code).toBe(
+      'EMPTY_INPUT',
+    );
+  });
+});
+
+describe('tabulateTide', () => {
+  const start = Date.UTC(2031, 0, 1);
+  const curve = tideCurve(quay);
+  const span = { from: start, to: start + 60 * 24 * HOUR };
+  const exact = curve.turningPoints(span);
+
+  it.each([
+    ['6 minutes', 6 * MINUTE, 0.002, 1],
+    ['hourly', HOUR, 0.01, 3],
+  ])('finds the tides of a %s record', (_, step, height, minutes) => {
+    const series = curve.heights({ start, step, count: (60 * 24 * HOUR) / step });
+    const { tides, dropped } = tabulateTide(series);
+    expect(dropped).toEqual({ small: 0, gaps: 0 });
+    expect(Math.abs(tides.length - exact.length)).toBeLessThanOrEqual(2);
+    for (const tide of tides) {
+      const twin = exact.find((p) => p.kind === tide.kind && Math.abs(p.time - tide.time) < HOUR);
+      if (!twin) continue;
+      expectWithin(tide.height, twin.height, { abs: height });
+      expectWithin(tide.time, twin.time, { abs: minutes * MINUTE });
+    }
+  });
+
+  it('does not count wavelets: seiches of 2 cm and 20 minutes leave the tides alone', () => {
+    const series = curve.heights({ start, step: 6 * MINUTE, count: 30 * 240 });
+    const values = series.values.map((h, i) => h + 0.02 * Math.sin((i * 2 * Math.PI) / (20 / 6)));
+    const calm = tabulateTide(series).tides;
+    const rough = tabulateTide(uniformSeries({ start, step: 6 * MINUTE, values })).tides;
+    // The record may end within a wavelet of its last crest: that one alone may differ.
+    expect(Math.abs(rough.length - calm.length)).toBeLessThanOrEqual(1);
+    const common = Math.min(rough.length, calm.length);
+    for (let i = 0; i < common; i++) {
+      expect(rough[i]?.kind).toBe(calm[i]?.kind);
+      expectWithin(rough[i]?.height as number, calm[i]?.height as number, { abs: 0.025 });
+    }
+  });
+
+  it('classes each tidal day: the higher of the highs, the lower of the lows', () => {
+    const series = curve.heights({ start, step: 6 * MINUTE, count: 60 * 240 });
+    const { tides } = tabulateTide(series);
+    const days = new Map<string, typeof tides>();
+    for (const tide of tides)
+      days.set(`${tide.kind} ${tide.tidalDay}`, [
+        ...(days.get(`${tide.kind} ${tide.tidalDay}`) ?? []),
+        tide,
+      ]);
+    let pairs = 0;
+    for (const list of days.values()) {
+      if (list.length !== 2 || list[0]?.class === 'unclassed') continue;
+      const [a, b] = [...list].sort((x, y) => x.height - y.height);
+      expect([a?.class, b?.class]).toEqual(['lower', 'higher']);
+      pairs++;
+    }
+    expect(pairs).toBeGreaterThan(100);
+  });
+
+  it('leaves the tides of a gap unclassed and says so', () => {
+    const series = curve.heights({ start, step: 6 * MINUTE, count: 60 * 240 });
+    const values = series.values.map((h, i) => (i > 5000 && i < 5100 ? Number.NaN : h));
+    const { tides, dropped, warnings } = tabulateTide(
+      uniformSeries({ start, step: 6 * MINUTE, values }),
+    );
+    expect(dropped.gaps).toBe(1);
+    expect(warnings[0]?.code).toBe('GAPS_LEFT_OUT');
+    const near = tides.filter((t) => Math.abs(t.time - (start + 5050 * 6 * MINUTE)) < 8 * HOUR);
+    expect(near.every((t) => t.class === 'unclassed')).toBe(true);
+  });
+
+  it.each<[string, () => unknown]>([
+    ['NO_TIDE', () => tabulateTide(uniformSeries({ start, step: HOUR, values: [1, 2, 3, 4] }))],
+    ['NO_TIDE', () => tabulateTide(uniformSeries({ start, step: HOUR, values: [] }))],
+    [
+      'NO_TIDE',
+      () =>
+        tabulateTide(
+          uniformSeries({ start, step: HOUR, values: new Float64Array(100).fill(Number.NaN) }),
+        ),
+    ],
+    [
+      'OUT_OF_RANGE',
+      () => tabulateTide(uniformSeries({ start, step: HOUR, values: [1] }), { smallestRange: -1 }),
+    ],
+    [
+      'OUT_OF_RANGE',
+      () =>
+        tabulateTide(uniformSeries({ start, step: HOUR, values: [1] }), {
+          shortestHours: Number.NaN,
+        }),
+    ],
+    ['WRONG_TYPE', () => tabulateTide({} as Series)],
+    [
+      'TOO_FEW_SAMPLES',
+      () => tidalDatums(tabulateTide(curve.heights({ start, step: HOUR, count: 15 }))),
+    ],
+  ])('refuses with %s', (code, run) => {
+    expect(refusal(run).code).toBe(code);
+  });
+});
