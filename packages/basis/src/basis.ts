@@ -17,9 +17,9 @@ import {
   type NodalHold,
   type NodalModel,
   type Sampling,
-  sin,
   toInstant,
 } from '@staithe/core';
+import { sin } from '@staithe/core/trig';
 import { type NodalPlan, nodalPhasorsInto, nodalPlan } from '@staithe/nodal';
 
 /** What a basis is made of. @public */

@@ -10,7 +10,8 @@
  * @module
  */
 import { lunisolarLongitudesInto } from '@staithe/arguments';
-import { DAY, degreesToRadians, HOUR, type Instant, sinCosInto, wrapDegrees } from '@staithe/core';
+import { DAY, degreesToRadians, HOUR, type Instant, wrapDegrees } from '@staithe/core';
+import { sinCosInto } from '@staithe/core/trig';
 import { nodalPhasorsInto } from '@staithe/nodal';
 import type { Basis } from './basis.js';
 

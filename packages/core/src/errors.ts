@@ -120,7 +120,7 @@ export function isStaitheError(
 }
 
 /**
- * A short, safe picture of any value for a message: at most 60 characters, control characters shown as escapes.
+ * A short, safe picture of any value for a message: at most 60 characters, control characters escaped or replaced.
  *
  * @param value - Anything.
  * @returns Text for the "got" part of a message.
@@ -129,13 +129,36 @@ export function isStaitheError(
  * @public
  */
 export function describe(value: unknown): string {
-  if (typeof value === 'number' || value === undefined || value === null) return String(value);
-  if (Array.isArray(value)) return `an array of ${value.length}`;
-  if (typeof value === 'string') {
-    const text = JSON.stringify(value.length > 60 ? `${value.slice(0, 57)}...` : value);
-    return text.replace(/[\u007f-\u009f\u2028-\u202e\u2066-\u2069]/g, (c) => {
-      return `\\u${c.charCodeAt(0).toString(16).padStart(4, '0')}`;
-    });
+  const kind = typeof value;
+  if (kind === 'string') {
+    const text = value as string;
+    const short = text.length > 60 ? `${text.slice(0, 57)}...` : text;
+    // JSON escapes the control characters below a space; the others and those that turn the line round go.
+    return JSON.stringify(short).replace(/[\x7f-\x9f\u2028-\u202e\u2066-\u2069]/g, '\ufffd');
   }
-  return typeof value === 'object' ? 'an object' : `a ${typeof value}`;
+  if (!value || (kind !== 'object' && kind !== 'function')) return String(value);
+  return Array.isArray(value) ? `an array of ${value.length}` : `an ${kind}`.replace('an f', 'a f');
+}
+
+/**
+ * Throws an {@link InputError} whose message reads `path: expected …, got …`.
+ *
+ * @param code - Why it is refused.
+ * @param path - Where in the input.
+ * @param expected - What was expected, in words.
+ * @param got - What was got; shown by {@link describe}.
+ * @param details - Plain data for programs.
+ * @throws InputError, always.
+ * @example
+ * refuse('UNKNOWN_UNIT', 'unit', 'm', 'ft'); // throws UNKNOWN_UNIT
+ * @public
+ */
+export function refuse(
+  code: InputErrorCode,
+  path: string,
+  expected: string,
+  got: unknown,
+  details?: ErrorDetails,
+): never {
+  throw new InputError(code, path, `expected ${expected}, got ${describe(got)}`, details);
 }

@@ -26,14 +26,9 @@ export {
   InputError,
   type InputErrorCode,
   isStaitheError,
+  refuse,
 } from './errors.js';
-export {
-  type AbortSignalLike,
-  type LongWork,
-  type Progress,
-  runInSlices,
-  runThrough,
-} from './long-work.js';
+export type { AbortSignalLike, LongWork, Progress } from './long-work.js';
 export { parseConstants } from './parse-constants.js';
 export { fromGreenwichPhaseLag, type PhaseConvention, toGreenwichPhaseLag } from './phase-lag.js';
 export {
@@ -65,7 +60,6 @@ export {
   toSpan,
   toStep,
 } from './time.js';
-export { atan2, cos, LARGEST_ANGLE, sin, sinCosInto } from './trig.js';
 export {
   feetFromMetres,
   knotsFromMetresPerSecond,

@@ -1,7 +1,7 @@
 /**
  * Long work that shows its progress and can be aborted. A long function is written once, as a generator that yields
  * its progress; its plain twin runs it through, its `…Async` twin runs it in slices and lets the host breathe.
- * @module
+ * @packageDocumentation
  */
 
 /** What is asked of an abort signal: the host's own `AbortSignal` fits. @public */

@@ -3,136 +3,138 @@
  * @module
  */
 import type { Finding, HarmonicConstants } from './constants-document.js';
-import { describe, InputError, type InputErrorCode, isStaitheError } from './errors.js';
+import { describe, InputError, type InputErrorCode, isStaitheError, refuse } from './errors.js';
 import { toInstant } from './time.js';
 
-type Check = (value: unknown, path: string, add: Add) => void;
+/**
+ * What a value must be: `t` text, `i` an instant as text, `n` a number (`n0,90` from 0 to 90), `=a|b` one of these;
+ * `[rule]` a list, an object its fields (`!` after a key: required), a function what it picks for the value.
+ */
+type Rule = string | readonly [Rule] | Shape | ((value: unknown) => Rule);
+type Shape = { readonly [key: string]: Rule };
 type Add = (path: string, expected: string, got: unknown, code?: InputErrorCode) => void;
-type Shape = Readonly<Record<string, readonly [check: Check, required?: boolean]>>;
 
+const SIZE = 'n0,';
+const LATITUDE = 'n-90,90';
+const DOCUMENT: Shape = {
+  'format!': '=staithe-constants',
+  'version!': '=1',
+  quantity: '=height',
+  'unit!': '=m',
+  place: { 'name!': 't', latitude: LATITUDE, longitude: 'n-360,360' },
+  datum: 't',
+  'meanLevel!': 'n',
+  secularRate: { 'metresPerYear!': 'n', 'at!': 'i' },
+  steps: [{ 'at!': 'i', 'change!': 'n' }],
+  'argumentModel!': '=iers2010|schureman1940',
+  'nodalModel!': '=potential|schureman1940|none',
+  nodalHold: (value) =>
+    typeof value === 'object' ? { 'heldAt!': 'i' } : '=continuous|calendar-year',
+  nodalLatitude: LATITUDE,
+  'constituents!': [
+    {
+      'name!': 't',
+      'amplitude!': SIZE,
+      'phaseLag!': 'n',
+      amplitudeSigma: SIZE,
+      phaseLagSigma: SIZE,
+      radius95: SIZE,
+      standing: '=firm|faint|borrowed',
+      borrowedFrom: 't',
+    },
+  ],
+  uncertainty: { 'order!': ['t'], 'covariance!': ['n'] },
+  source: 't',
+  record: { 'from!': 'i', 'to!': 'i', 'samples!': SIZE },
+  validity: { from: 'i', to: 'i' },
+};
 const DEEPEST = 32;
 
 /** A copy without surprises: plain data only, no key that could reach a prototype. */
 function copyPlain(value: unknown, path: string, depth: number): unknown {
-  if (typeof value !== 'object' || value === null) return value;
+  if (typeof value !== 'object' || !value) return value;
   if (depth > DEEPEST) {
-    throw new InputError('INVALID_DOCUMENT', path, `expected at most ${DEEPEST} levels, got more`);
+    refuse('INVALID_DOCUMENT', path, `at most ${DEEPEST} levels`, value);
   }
   if (Array.isArray(value)) return value.map((v, i) => copyPlain(v, `${path}[${i}]`, depth + 1));
   const out: Record<string, unknown> = {};
   for (const [key, inner] of Object.entries(value)) {
     const at = path ? `${path}.${key}` : key;
-    if (key === '__proto__' || key === 'constructor' || key === 'prototype') {
-      throw new InputError('UNSAFE_KEY', at, `expected another key, got ${describe(key)}`);
+    if (key in {}) {
+      refuse('UNSAFE_KEY', at, 'another key', key);
     }
     out[key] = copyPlain(inner, at, depth + 1);
   }
   return out;
 }
 
-const finite =
-  (low: number, high: number, words: string): Check =>
-  (value, path, add) => {
-    if (typeof value === 'number' && value >= low && value <= high) return;
-    add(path, words, value, typeof value === 'number' ? 'OUT_OF_RANGE' : undefined);
-  };
-const BIG = Number.MAX_VALUE;
-const aNumber: Check = finite(-BIG, BIG, 'a finite number');
-const zeroOrMore: Check = finite(0, BIG, 'a finite number, 0 or more');
-const latitude: Check = finite(-90, 90, 'degrees from -90 to 90');
-const longitude: Check = finite(-360, 360, 'degrees east from -360 to 360');
-const text: Check = (value, path, add) => {
-  if (typeof value !== 'string' || value === '') add(path, 'text', value);
-};
-const instant: Check = (value, path, add) => {
-  if (typeof value !== 'string') return add(path, 'an instant as text with Z or an offset', value);
+function checkInstant(value: string, path: string, add: Add): void {
   try {
     toInstant(value, path);
   } catch (error) {
-    add(
-      path,
-      'an instant with Z or an offset',
-      value,
-      isStaitheError(error) ? (error.code as InputErrorCode) : undefined,
-    );
+    if (isStaitheError(error))
+      add(path, 'an instant with Z or an offset', value, error.code as InputErrorCode);
   }
-};
-const oneOf =
-  (code: InputErrorCode, ...choices: readonly unknown[]): Check =>
-  (value, path, add) => {
-    if (!choices.includes(value)) add(path, choices.join(' or '), value, code);
-  };
-const shape =
-  (fields: Shape): Check =>
-  (value, path, add) => {
-    if (typeof value !== 'object' || value === null || Array.isArray(value)) {
+}
+
+function checkLeaf(rule: string, value: unknown, path: string, add: Add): void {
+  const kind = rule[0];
+  const rest = rule.slice(1);
+  if (kind === '=') {
+    const key = (path.split('.').pop() as string).toUpperCase();
+    const code = /^(FORMAT|VERSION|UNIT)$/.test(key) ? `UNKNOWN_${key}` : 'UNKNOWN_CHOICE';
+    const choices = rest.split('|');
+    if (choices.some((choice) => choice === value || Number(choice) === value)) return;
+    add(path, choices.join(' or '), value, code as InputErrorCode);
+  } else if (kind === 'n') {
+    const [low, high] = rest.split(',').map((end) => (end ? Number(end) : undefined));
+    const inside =
+      Number.isFinite(value) &&
+      !((value as number) < (low ?? -Infinity)) &&
+      !((value as number) > (high ?? Infinity));
+    const range = high ? ` from ${low} to ${high}` : low === 0 ? ', 0 or more' : '';
+    if (!inside)
+      add(
+        path,
+        `a finite number${range}`,
+        value,
+        typeof value === 'number' ? 'OUT_OF_RANGE' : undefined,
+      );
+  } else if (typeof value !== 'string' || !value) add(path, 'text', value);
+  else if (kind === 'i') checkInstant(value, path, add);
+}
+
+function check(rule: Rule, value: unknown, path: string, add: Add): void {
+  if (typeof rule === 'string') checkLeaf(rule, value, path, add);
+  else if (typeof rule === 'function') check(rule(value), value, path, add);
+  else if (Array.isArray(rule)) {
+    if (!Array.isArray(value)) return add(path, 'an array', value);
+    for (let i = 0; i < value.length; i++) check(rule[0] as Rule, value[i], `${path}[${i}]`, add);
+  } else {
+    if (typeof value !== 'object' || !value || Array.isArray(value)) {
       return add(path || 'constants', 'an object', value, 'WRONG_TYPE');
     }
-    for (const [key, [check, required]] of Object.entries(fields)) {
-      const inner = (value as Record<string, unknown>)[key];
+    for (const [field, inner] of Object.entries(rule)) {
+      const key = field.replace('!', '');
       const at = path ? `${path}.${key}` : key;
-      if (inner !== undefined) check(inner, at, add);
-      else if (required) add(at, 'a value', undefined, 'MISSING');
+      const found = (value as Record<string, unknown>)[key];
+      if (found !== undefined) check(inner, found, at, add);
+      else if (key !== field) add(at, 'a value', found, 'MISSING');
     }
-  };
-const list =
-  (check: Check): Check =>
-  (value, path, add) => {
-    if (!Array.isArray(value)) return add(path, 'an array', value);
-    value.forEach((inner: unknown, i) => check(inner, `${path}[${i}]`, add));
-  };
-const hold: Check = (value, path, add) => {
-  if (typeof value === 'object') return shape({ heldAt: [instant, true] })(value, path, add);
-  oneOf('UNKNOWN_CHOICE', 'continuous', 'calendar-year')(value, path, add);
-};
-
-const constantsShape = (): Check =>
-  shape({
-    format: [oneOf('UNKNOWN_FORMAT', 'staithe-constants'), true],
-    version: [oneOf('UNKNOWN_VERSION', 1), true],
-    quantity: [oneOf('UNKNOWN_CHOICE', 'height')],
-    unit: [oneOf('UNKNOWN_UNIT', 'm'), true],
-    place: [shape({ name: [text, true], latitude: [latitude], longitude: [longitude] })],
-    datum: [text],
-    meanLevel: [aNumber, true],
-    secularRate: [shape({ metresPerYear: [aNumber, true], at: [instant, true] })],
-    steps: [list(shape({ at: [instant, true], change: [aNumber, true] }))],
-    argumentModel: [oneOf('UNKNOWN_CHOICE', 'iers2010', 'schureman1940'), true],
-    nodalModel: [oneOf('UNKNOWN_CHOICE', 'potential', 'schureman1940', 'none'), true],
-    nodalHold: [hold],
-    nodalLatitude: [latitude],
-    constituents: [
-      list(
-        shape({
-          name: [text, true],
-          amplitude: [zeroOrMore, true],
-          phaseLag: [aNumber, true],
-          amplitudeSigma: [zeroOrMore],
-          phaseLagSigma: [zeroOrMore],
-          radius95: [zeroOrMore],
-          standing: [oneOf('UNKNOWN_CHOICE', 'firm', 'faint', 'borrowed')],
-          borrowedFrom: [text],
-        }),
-      ),
-      true,
-    ],
-    uncertainty: [shape({ order: [list(text), true], covariance: [list(aNumber), true] })],
-    source: [text],
-    record: [shape({ from: [instant, true], to: [instant, true], samples: [zeroOrMore, true] })],
-    validity: [shape({ from: [instant], to: [instant] })],
-  });
+  }
+}
 
 /** What a schema cannot say: one entry a name, and a covariance of the right length. */
-function checkWhole(document: HarmonicConstants, add: Add): void {
-  const seen = new Set<string>();
-  document.constituents.forEach(({ name }, i) => {
-    if (seen.has(name)) add(`constituents[${i}].name`, 'each name once', name, 'DUPLICATE');
-    seen.add(name);
+function checkWhole({ constituents, uncertainty }: HarmonicConstants, add: Add): void {
+  const names = constituents.map(({ name }) => name);
+  names.forEach((name, i) => {
+    if (names.indexOf(name) < i)
+      add(`constituents[${i}].name`, 'each name once', name, 'DUPLICATE');
   });
-  const { order, covariance } = document.uncertainty ?? { order: [], covariance: [] };
-  const length = (order.length * (order.length + 1)) / 2;
-  if (covariance.length !== length) {
-    add('uncertainty.covariance', `${length} numbers`, covariance, 'LENGTH_MISMATCH');
+  const count = uncertainty?.order.length ?? 0;
+  const length = (count * (count + 1)) / 2;
+  if (uncertainty && uncertainty.covariance.length !== length) {
+    add('uncertainty.covariance', `${length} numbers`, uncertainty.covariance, 'LENGTH_MISMATCH');
   }
 }
 
@@ -150,19 +152,18 @@ function checkWhole(document: HarmonicConstants, add: Add): void {
  */
 export function parseConstants(json: unknown): HarmonicConstants {
   const document = copyPlain(json, '', 0);
-  const findings: (Finding & { code: InputErrorCode })[] = [];
+  const codes: InputErrorCode[] = [];
+  const findings: Finding[] = [];
   const add: Add = (path, expected, got, code = 'INVALID_DOCUMENT') => {
-    findings.push({ path, expected, got: describe(got), code });
+    codes.push(code);
+    findings.push({ path, expected, got: describe(got) });
   };
-  constantsShape()(document, '', add);
+  check(DOCUMENT, document, '', add);
   if (findings.length === 0) checkWhole(document as HarmonicConstants, add);
-  const first = findings.find((f) => f.code === 'UNKNOWN_VERSION') ?? findings[0];
+  const at = Math.max(0, codes.indexOf('UNKNOWN_VERSION'));
+  const first = findings[at];
   if (!first) return document as HarmonicConstants;
   const more = findings.length > 1 ? `; ${findings.length - 1} more in details.findings` : '';
-  throw new InputError(
-    first.code,
-    first.path,
-    `expected ${first.expected}, got ${first.got}${more}`,
-    { findings: findings.map(({ path, expected, got }) => ({ path, expected, got })) },
-  );
+  const text = `expected ${first.expected}, got ${first.got}${more}`;
+  throw new InputError(codes[at] as InputErrorCode, first.path, text, { findings });
 }

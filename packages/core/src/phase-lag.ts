@@ -7,7 +7,7 @@
  * @module
  */
 import { type Degrees, wrapDegrees } from './angles.js';
-import { describe, InputError } from './errors.js';
+import { refuse } from './errors.js';
 
 /**
  * The convention of a phase lag: counted at the place (`doodsonNumbers`, of which the first counts, and `longitude`,
@@ -25,7 +25,7 @@ function shift(convention: PhaseConvention): Degrees {
       : [convention.speed, convention.zoneHours, 'zoneHours'];
   const turned = (a as number) * b;
   if (Number.isFinite(turned)) return turned;
-  throw new InputError('NOT_FINITE', path, `expected a finite number, got ${describe(b)}`);
+  refuse('NOT_FINITE', path, 'a finite number', b);
 }
 
 /**

@@ -2,7 +2,7 @@
  * Series of water levels: at a uniform step, or at times of their own. Missing is NaN, never 0 or 9999.
  * @module
  */
-import { describe, InputError } from './errors.js';
+import { refuse } from './errors.js';
 import { type Instant, type InstantLike, toInstant, toStep } from './time.js';
 
 /** Each value is a mean over this long, stamped there. Absent: instantaneous values. @public */
@@ -53,14 +53,10 @@ function readValues(values: Values): Float64Array {
   for (let i = 0; i < out.length; i++) {
     const value = values[i];
     if (value !== null && typeof value !== 'number') {
-      throw new InputError(
-        'WRONG_TYPE',
-        `values[${i}]`,
-        `expected a number or null, got ${describe(value)}`,
-      );
+      refuse('WRONG_TYPE', `values[${i}]`, 'a number or null', value);
     }
     if (value === Infinity || value === -Infinity) {
-      throw new InputError('NOT_FINITE', `values[${i}]`, `expected a finite number, got ${value}`);
+      refuse('NOT_FINITE', `values[${i}]`, 'a finite number', value);
     }
     out[i] = value ?? Number.NaN;
   }
@@ -68,21 +64,13 @@ function readValues(values: Values): Float64Array {
 }
 
 function readSampling(sampling: Sampling | undefined): { sampling?: Sampling } {
-  if (sampling === undefined) return {};
+  if (!sampling) return {};
   const { meanOver, stamp } = sampling;
   if (!(meanOver > 0 && meanOver < Infinity)) {
-    throw new InputError(
-      'OUT_OF_RANGE',
-      'sampling.meanOver',
-      `expected milliseconds above 0, got ${describe(meanOver)}`,
-    );
+    refuse('OUT_OF_RANGE', 'sampling.meanOver', 'milliseconds above 0', meanOver);
   }
-  if (stamp !== 'start' && stamp !== 'middle' && stamp !== 'end') {
-    throw new InputError(
-      'UNKNOWN_CHOICE',
-      'sampling.stamp',
-      `expected start, middle or end, got ${describe(stamp)}`,
-    );
+  if (!['start', 'middle', 'end'].includes(stamp)) {
+    refuse('UNKNOWN_CHOICE', 'sampling.stamp', 'start, middle or end', stamp);
   }
   return { sampling: { meanOver, stamp } };
 }
@@ -127,20 +115,12 @@ export function sampledSeries(input: {
 }): SampledSeries {
   const n = input.times.length;
   if (input.values.length !== n) {
-    throw new InputError(
-      'LENGTH_MISMATCH',
-      'values',
-      `expected ${n} as in times, got ${input.values.length}`,
-    );
+    refuse('LENGTH_MISMATCH', 'values', `${n} as in times`, input.values.length);
   }
   const times = toTimes(input.times);
   for (let i = 1; i < n; i++) {
     if ((times[i] as number) > (times[i - 1] as number)) continue;
-    throw new InputError(
-      'NOT_RISING',
-      `times[${i}]`,
-      `expected after ${times[i - 1]}, got ${times[i]}`,
-    );
+    refuse('NOT_RISING', `times[${i}]`, `after ${times[i - 1]}`, times[i]);
   }
   return { times, values: readValues(input.values), ...readSampling(input.sampling) };
 }
@@ -189,7 +169,7 @@ export function seriesTimes(series: Series): Float64Array {
  */
 export function checkSeries(series: Series): Series {
   if (!ArrayBuffer.isView((series as Series | undefined)?.values)) {
-    throw new InputError('WRONG_TYPE', 'series', `expected a series, got ${describe(series)}`);
+    refuse('WRONG_TYPE', 'series', 'a series', series);
   }
   return series.times ? sampledSeries(series) : uniformSeries(series);
 }
@@ -223,11 +203,7 @@ export function toJson(series: Series): SeriesJson {
  */
 export function fromJson(json: SeriesJson): Series {
   if (typeof json !== 'object' || !json || !Array.isArray(json.values)) {
-    throw new InputError(
-      'WRONG_TYPE',
-      'series',
-      `expected an object with values, got ${describe(json)}`,
-    );
+    refuse('WRONG_TYPE', 'series', 'an object with values', json);
   }
   const { times, values, sampling } = json;
   if (times) return sampledSeries({ times, values, sampling });

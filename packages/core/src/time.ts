@@ -2,7 +2,7 @@
  * Instants, spans and steps. An instant is milliseconds since 1970-01-01T00:00Z, UTC read as UT1.
  * @module
  */
-import { describe, InputError, type InputErrorCode } from './errors.js';
+import { refuse } from './errors.js';
 
 /** Milliseconds since 1970-01-01T00:00Z, UTC. Fractions are allowed as input; results are whole. @public */
 export type Instant = number;
@@ -35,21 +35,17 @@ const ISO =
 
 function inRange(value: Instant, path: string, got: unknown): Instant {
   if (value >= EARLIEST && value <= LATEST) return value;
-  throw new InputError(
-    Number.isFinite(value) ? 'OUT_OF_RANGE' : 'NOT_FINITE',
-    path,
-    `expected an instant from year 1700 to 2200, got ${describe(got)}`,
-  );
+  const code = Number.isFinite(value) ? 'OUT_OF_RANGE' : 'NOT_FINITE';
+  refuse(code, path, 'an instant from year 1700 to 2200', got);
 }
 
 function parseInstant(text: string, path: string): Instant {
-  const bad = (code: InputErrorCode, expected: string): InputError =>
-    new InputError(code, path, `expected ${expected}, got ${describe(text)}`);
   const [, date, hour, minute, second = 0, fraction, sign, offsetHour = 0, offsetMinute = 0] =
     ISO.exec(text) ?? [];
-  if (!date || !hour) throw bad('BAD_TIME', 'date, time and zone like 2031-06-01T12:00Z');
-  if (!sign && !text.endsWith('Z')) throw bad('NO_TIME_ZONE', 'Z or an offset after the time');
-  if (second === '60') throw bad('LEAP_SECOND', 'seconds from 00 to 59');
+  if (!date || !hour) refuse('BAD_TIME', path, 'date, time and zone like 2031-06-01T12:00Z', text);
+  if (!sign && !text.endsWith('Z'))
+    refuse('NO_TIME_ZONE', path, 'Z or an offset after the time', text);
+  if (second === '60') refuse('LEAP_SECOND', path, 'seconds from 00 to 59', text);
   const day = Date.parse(date); // a date alone is read as UTC by every engine
   const local = day + +hour * HOUR + +(minute as string) * MINUTE + +second * SECOND;
   if (
@@ -61,7 +57,7 @@ function parseInstant(text: string, path: string): Instant {
     +offsetHour > 18 ||
     +offsetMinute > 59
   ) {
-    throw bad('BAD_TIME', 'a date and time that exist');
+    refuse('BAD_TIME', path, 'a date and time that exist', text);
   }
   const offset = +`${sign ?? '+'}1` * (+offsetHour * HOUR + +offsetMinute * MINUTE);
   const milliseconds = fraction ? +`0.${fraction.slice(1)}` * SECOND : 0;
@@ -85,7 +81,7 @@ export function toInstant(value: InstantLike, path: string = 'time'): Instant {
   if (value instanceof Date) return inRange(value.getTime(), path, value.getTime());
   const ms = (value as { epochMilliseconds?: unknown } | null | undefined)?.epochMilliseconds;
   if (typeof ms === 'number') return inRange(ms, path, ms);
-  throw new InputError('WRONG_TYPE', path, `expected an instant, got ${describe(value)}`);
+  refuse('WRONG_TYPE', path, 'an instant', value);
 }
 
 /**
@@ -102,7 +98,7 @@ export function toSpan(span: Span): { readonly from: Instant; readonly to: Insta
   const from = toInstant(span.from, 'span.from');
   const to = toInstant(span.to, 'span.to');
   if (to > from) return { from, to };
-  throw new InputError('EMPTY_SPAN', 'span.to', `expected after span.from ${from}, got ${to}`);
+  refuse('EMPTY_SPAN', 'span.to', `after span.from ${from}`, to);
 }
 
 /**
@@ -116,14 +112,12 @@ export function toSpan(span: Span): { readonly from: Instant; readonly to: Insta
  * @public
  */
 export function toStep(step: number): number {
-  if (!Number.isFinite(step)) {
-    throw new InputError('NOT_FINITE', 'step', `expected milliseconds, got ${describe(step)}`);
-  }
-  if (step >= SECOND) return step;
-  throw new InputError(
-    'STEP_TOO_SHORT',
+  if (step >= SECOND && step < Infinity) return step;
+  refuse(
+    Number.isFinite(step) ? 'STEP_TOO_SHORT' : 'NOT_FINITE',
     'step',
-    `expected 1000 ms or more (steps are milliseconds: six minutes are 6 * MINUTE), got ${step}`,
+    '1000 ms or more (steps are milliseconds: six minutes are 6 * MINUTE)',
+    step,
   );
 }
 

@@ -4,10 +4,9 @@ import {
   describe,
   InputError,
   isStaitheError,
-  runInSlices,
-  runThrough,
   type Progress,
 } from '../src/index.js';
+import { runInSlices, runThrough } from '../src/long-work.js';
 
 group('errors', () => {
   it('are told by code, also from another copy of the package', () => {
@@ -25,7 +24,7 @@ group('errors', () => {
 
   it('show values safely and in short', () => {
     expect(describe('a\u001b[31mb')).toBe('"a\\u001b[31mb"');
-    expect(describe('\u202etxt')).toBe('"\\u202etxt"');
+    expect(describe('\u202etxt')).toBe('"\ufffdtxt"');
     expect(describe('x'.repeat(100)).length).toBe(62);
     expect(describe([1, 2])).toBe('an array of 2');
     expect(describe({})).toBe('an object');

@@ -7,10 +7,8 @@
  */
 import { lunisolarLongitudes } from '@staithe/arguments';
 import {
-  atan2,
   checkSeries,
   ComputationError,
-  cos,
   degreesToRadians,
   describe,
   HOUR,
@@ -19,8 +17,8 @@ import {
   radiansToDegrees,
   type Series,
   seriesTimes,
-  sin,
 } from '@staithe/core';
+import { atan2, cos, sin } from '@staithe/core/trig';
 import { type Extreme, extremesOf, runsOf } from './extremes.js';
 import type { DatumWarning, TabulatedTide, TabulatedTides } from './types.js';
 

@@ -6,7 +6,8 @@
  * @module
  */
 import { type Basis, columnsInto, TILE, type Tile, tiles } from '@staithe/basis';
-import { cos, degreesToRadians, type Instant, sin, wrapDegrees } from '@staithe/core';
+import { degreesToRadians, type Instant, wrapDegrees } from '@staithe/core';
+import { cos, sin } from '@staithe/core/trig';
 
 /** Milliseconds in a year of 365.25 days, the year of secular rates. */
 export const YEAR = 31557600000;

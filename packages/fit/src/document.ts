@@ -3,13 +3,13 @@
  * @module
  */
 import {
-  atan2,
   formatInstant,
   type HarmonicConstant,
   type HarmonicConstants,
   radiansToDegrees,
   wrapDegrees,
 } from '@staithe/core';
+import { atan2 } from '@staithe/core/trig';
 import { type Design, headCount } from './design.js';
 import { pairErrors } from './errors-of.js';
 import type { FitRecord } from './record.js';

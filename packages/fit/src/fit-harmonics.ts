@@ -10,11 +10,10 @@ import {
   ComputationError,
   type LongWork,
   type Progress,
-  runInSlices,
-  runThrough,
   type Series,
   toInstant,
 } from '@staithe/core';
+import { runInSlices, runThrough } from '@staithe/core/long-work';
 import { type Design, makeDesign } from './design.js';
 import { documentOf, middleOf } from './document.js';
 import { covarianceOf, noiseOf } from './errors-of.js';

@@ -7,7 +7,8 @@
  * I(ω) = |Σ r·e^{−iωt}|²/n has the variance of white noise as its mean.
  * @module
  */
-import { degreesToRadians, HOUR, sinCosInto } from '@staithe/core';
+import { degreesToRadians, HOUR } from '@staithe/core';
+import { sinCosInto } from '@staithe/core/trig';
 
 const NEAREST = 0.02; // degrees per hour
 const BANDS = [0.3, 1, 3];

@@ -6,7 +6,6 @@ import { lunisolarLongitudesInto } from '@staithe/arguments';
 import { type Constituent, type ConstituentName, constituent } from '@staithe/constituents';
 import {
   type ArgumentModel,
-  atan2,
   type Degrees,
   type InstantLike,
   type Metres,
@@ -14,6 +13,7 @@ import {
   radiansToDegrees,
   toInstant,
 } from '@staithe/core';
+import { atan2 } from '@staithe/core/trig';
 import { nodalPhasorsInto, nodalPlan } from './nodal-plan.js';
 
 /** Options of {@link nodalCorrection}. @public */

@@ -8,9 +8,9 @@ import {
   describe,
   InputError,
   type NodalModel,
-  sinCosInto,
   wrapDegrees,
 } from '@staithe/core';
+import { sinCosInto } from '@staithe/core/trig';
 import { type Constituent, constituent, potentialLines } from '@staithe/constituents';
 import { schuremanFormula, schuremanPair } from './schureman1940.js';
 import { sideLines } from './side-lines.js';

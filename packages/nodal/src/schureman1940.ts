@@ -4,15 +4,8 @@
  * by the official predictions of La Jolla. Unlike the potential, they know the node alone (M1 and L2 the perigee too).
  * @module
  */
-import {
-  atan2,
-  cos,
-  type Degrees,
-  degreesToRadians,
-  radiansToDegrees,
-  sin,
-  wrapDegrees,
-} from '@staithe/core';
+import { type Degrees, degreesToRadians, radiansToDegrees, wrapDegrees } from '@staithe/core';
+import { atan2, cos, sin } from '@staithe/core/trig';
 
 /** The angles of the Moon's orbit on the equator, all in degrees. @public */
 export interface OrbitAngles {

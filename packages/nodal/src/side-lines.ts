@@ -5,7 +5,8 @@
  * weighed by W₃/W₂ at the latitude and turned by the quarter turn between the sine and the cosine of the two degrees.
  * @module
  */
-import { cos, type Degrees, degreesToRadians, describe, InputError, sin } from '@staithe/core';
+import { type Degrees, degreesToRadians, describe, InputError } from '@staithe/core';
+import { cos, sin } from '@staithe/core/trig';
 import { type Constituent, type PotentialLine, potentialLines } from '@staithe/constituents';
 
 /** A line beside the main line of a constituent. @public */

@@ -6,7 +6,6 @@ import { type Basis, makeBasis } from '@staithe/basis';
 import { type Constituent, constituent } from '@staithe/constituents';
 import {
   type ArgumentModel,
-  cos,
   degreesToRadians,
   describe,
   type HarmonicConstants,
@@ -16,10 +15,10 @@ import {
   type NodalHold,
   type NodalModel,
   type Sampling,
-  sin,
   toInstant,
   wrapDegrees,
 } from '@staithe/core';
+import { cos, sin } from '@staithe/core/trig';
 
 /** Options of a prediction. @public */
 export interface CurveOptions {

@@ -5,7 +5,7 @@
  * h′ = Σ Re (P′ + iσP)e^{…}, h″ = Σ Re (P″ + 2iσP′ − σ²P)e^{…}.
  * @module
  */
-import { sinCosInto } from '@staithe/core';
+import { sinCosInto } from '@staithe/core/trig';
 
 /**
  * Multiplies the cubics of a basis by the coefficients of a curve.

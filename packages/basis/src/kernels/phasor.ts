@@ -3,7 +3,7 @@
  * times (about 15 ns), a complex product a sample on a uniform grid, restarted each 128 samples (error below 2e-14).
  * @module
  */
-import { sinCosInto } from '@staithe/core';
+import { sinCosInto } from '@staithe/core/trig';
 
 const RESTART = 128;
 
