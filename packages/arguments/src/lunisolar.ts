@@ -143,7 +143,7 @@ export function lunisolarRates(
  * @returns Degrees in [0, 360); within 1e-8° of ERFA 2.0.0, 1850 to 2150.
  * @throws InputError `NOT_FINITE` or `OUT_OF_RANGE` (beyond five centuries from 2000), path `julianDateTT`.
  * @example
- * lunisolarLongitudesTT({ day: 2451545, fraction: 0 }).h.toFixed(4); // '280.4664'
+ * lunisolarLongitudesTT({ day: 2451545, fraction: 0 }).h.toFixed(4); // '280.4665'
  * @public
  */
 export function lunisolarLongitudesTT(

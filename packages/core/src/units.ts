@@ -10,7 +10,8 @@
 export type Metres = number;
 
 const METRES_PER_FOOT = 0.3048;
-const METRES_PER_SECOND_PER_KNOT = 1852 / 3600;
+const METRES_PER_NAUTICAL_MILE = 1852;
+const SECONDS_PER_HOUR = 3600;
 
 /**
  * International feet to metres.
@@ -48,7 +49,7 @@ export function feetFromMetres(metres: Metres): number {
  * @public
  */
 export function metresPerSecondFromKnots(knots: number): number {
-  return knots * METRES_PER_SECOND_PER_KNOT;
+  return (knots * METRES_PER_NAUTICAL_MILE) / SECONDS_PER_HOUR;
 }
 
 /**
@@ -61,5 +62,5 @@ export function metresPerSecondFromKnots(knots: number): number {
  * @public
  */
 export function knotsFromMetresPerSecond(metresPerSecond: number): number {
-  return metresPerSecond / METRES_PER_SECOND_PER_KNOT;
+  return (metresPerSecond * SECONDS_PER_HOUR) / METRES_PER_NAUTICAL_MILE;
 }
