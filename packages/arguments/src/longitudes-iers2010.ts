@@ -6,6 +6,8 @@
  * @module
  */
 
+import { wrapDegrees } from '@staithe/core';
+
 // One row an argument (l, l′, F, D, Ω): degrees at J2000, then arcseconds per century^k, k = 1 … 4.
 const DELAUNAY: readonly (readonly number[])[] = /* @__PURE__ */ Object.freeze([
   [134.96340251, 1717915923.2178, 31.8792, 0.051635, -0.0002447],
@@ -31,7 +33,7 @@ export function longitudesIers2010(t: number): number[] {
     const ratio =
       (t * ((b as number) + t * ((c as number) + t * ((e as number) + t * (g as number))))) /
       ARCSECONDS;
-    return ((a as number) + (ratio % 360)) % 360;
+    return wrapDegrees((a as number) + wrapDegrees(ratio));
   }) as [number, number, number, number, number];
   return combine(l, lPrime, f, d, node);
 }

@@ -10,7 +10,15 @@ import type { Basis } from './basis.js';
 import { rankUpdate } from './kernels/rank-update.js';
 import { columnsInto, gridCount, TILE, type TimeGrid, tiles } from './tiles.js';
 
-/** Columns of a basis: 1 + 2K. */
+/**
+ * Columns of a basis.
+ *
+ * @param basis - Of `makeBasis`.
+ * @returns 1 + 2K.
+ * @example
+ * columnCount(makeBasis({ constituents: ['M2'] })); // 3
+ * @public
+ */
 export function columnCount(basis: Basis): number {
   return 1 + 2 * basis.speeds.length;
 }
@@ -87,7 +95,7 @@ export function projectInto(
   out.fill(0);
   const columns = new Float64Array((count - 1) * TILE);
   const pair = new Float64Array(2);
-  for (const tile of tiles(basis, grid, (i) => !Number.isNaN(values[i] as number))) {
+  for (const tile of tiles(basis, grid, (i) => !Number.isNaN(values[i]))) {
     columnsInto(columns, basis, tile, pair);
     for (let k = 0; k < count; k++) {
       const at = (k - 1) * TILE;
@@ -113,7 +121,7 @@ export function projectInto(
  * gram(makeBasis({ constituents: [] }), { start: 0, step: 60000, count: 5 })[0]; // 5
  * @public
  */
-export function gram(basis: Basis, grid: TimeGrid, mask?: Uint8Array | undefined): Float64Array {
+export function gram(basis: Basis, grid: TimeGrid, mask?: Uint8Array): Float64Array {
   const count = columnCount(basis);
   if (mask) checkLength('mask', gridCount(grid), mask.length);
   const out = new Float64Array(count * count);

@@ -16,10 +16,10 @@ export type TimeGrid =
     }
   | { readonly times: Float64Array; readonly start?: never };
 
-/** Samples in a tile, at most. */
+/** Samples in a tile, at most. @public */
 export const TILE = 512;
 
-/** Samples of one tile. */
+/** Samples of one tile. @public */
 export interface Tile {
   /** Index in the grid of each sample, length n. */
   readonly indices: Int32Array;
@@ -31,7 +31,15 @@ export interface Tile {
   readonly stretch: Stretch;
 }
 
-/** How many samples a grid has. */
+/**
+ * How many samples a grid has.
+ *
+ * @param grid - Times.
+ * @returns Samples.
+ * @example
+ * gridCount({ start: 0, step: 60000, count: 5 }); // 5
+ * @public
+ */
 export function gridCount(grid: TimeGrid): number {
   return grid.times ? grid.times.length : grid.count;
 }
@@ -42,6 +50,12 @@ export function gridCount(grid: TimeGrid): number {
  * @param basis - Whose stretches.
  * @param grid - Times.
  * @param present - Tells whether the sample at an index takes part.
+ * @param stretcher - Of `makeStretcher`, where the caller has one.
+ * @returns One tile after another.
+ * @example
+ * const basis = makeBasis({ constituents: ['M2'] });
+ * [...tiles(basis, { start: 0, step: 60000, count: 5 }, () => true)].length; // 1
+ * @public
  */
 export function* tiles(
   basis: Basis,
@@ -80,7 +94,22 @@ export function* tiles(
   }
 }
 
-/** Writes the columns of a tile: row 2j the cosine, row 2j + 1 the sine function of constituent j, TILE apart. */
+/**
+ * Writes the columns of a tile: row 2j the cosine, row 2j + 1 the sine function of constituent j.
+ *
+ * @param out - Written to: 2K rows of {@link TILE} numbers.
+ * @param basis - Of `makeBasis`.
+ * @param tile - Of {@link tiles}.
+ * @param pair - Scratch, length 2.
+ * @example
+ * const basis = makeBasis({ constituents: ['S2'], nodalModel: 'none' });
+ * const columns = new Float64Array(2 * TILE);
+ * for (const tile of tiles(basis, { start: 0, step: 60000, count: 1 }, () => true)) {
+ *   columnsInto(columns, basis, tile, new Float64Array(2));
+ * }
+ * columns[0]; // 1
+ * @public
+ */
 export function columnsInto(out: Float64Array, basis: Basis, tile: Tile, pair: Float64Array): void {
   const { stretch, offsets, n, step } = tile;
   for (let j = 0; j < basis.speeds.length; j++) {

@@ -21,6 +21,7 @@ export interface Progress {
 export interface LongWork {
   /** An abort rejects with `signal.reason`. */
   readonly signal?: AbortSignalLike | undefined;
+  /** Called after each step of the work. */
   readonly onProgress?: ((progress: Progress) => void) | undefined;
 }
 

@@ -46,9 +46,7 @@ export interface SeriesJson {
   readonly sampling?: Sampling;
 }
 
-type Values = ArrayLike<number | null>;
-
-function readValues(values: Values): Float64Array {
+function readValues(values: ArrayLike<number | null>): Float64Array {
   const out = new Float64Array(values.length);
   for (let i = 0; i < out.length; i++) {
     const value = values[i];
@@ -88,7 +86,7 @@ function readSampling(sampling: Sampling | undefined): { sampling?: Sampling } {
 export function uniformSeries(input: {
   readonly start: InstantLike;
   readonly step: number;
-  readonly values: Values;
+  readonly values: ArrayLike<number | null>;
   readonly sampling?: Sampling | undefined;
 }): UniformSeries {
   const start = toInstant(input.start, 'start');
@@ -110,7 +108,7 @@ export function uniformSeries(input: {
  */
 export function sampledSeries(input: {
   readonly times: ArrayLike<InstantLike>;
-  readonly values: Values;
+  readonly values: ArrayLike<number | null>;
   readonly sampling?: Sampling | undefined;
 }): SampledSeries {
   const n = input.times.length;

@@ -40,7 +40,7 @@ export function runsOf(times: Float64Array, values: Float64Array): Run[] {
     kept = [];
   };
   for (let i = 0; i < values.length; i++) {
-    if (Number.isNaN(values[i] as number)) continue;
+    if (Number.isNaN(values[i])) continue;
     const last = kept[kept.length - 1];
     if (last !== undefined && (times[i] as number) - (times[last] as number) > LONGEST_GAP) close();
     kept.push(i);

@@ -110,7 +110,7 @@ export function* designTiles(
   const pair = new Float64Array(2);
   const grid = step > 0 ? { start: times[0] ?? 0, step, count: times.length } : { times };
   const waves = columns.subarray(headCount(design) * TILE);
-  for (const tile of tiles(design.basis, grid, (i) => !Number.isNaN(values[i] as number))) {
+  for (const tile of tiles(design.basis, grid, (i) => !Number.isNaN(values[i]))) {
     columnsInto(waves, design.basis, tile, pair);
     foldInto(waves, design, tile.n);
     headInto(columns, design, tile);

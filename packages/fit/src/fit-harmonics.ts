@@ -21,16 +21,20 @@ import type { LineNoise } from './noise.js';
 import { normalEquations, residualsOf } from './normal.js';
 import { type Borrowed, readBorrowings, readChoice, readSteps } from './read-options.js';
 import { type FitRecord, readRecord } from './record.js';
-import { closePairs, type Selection, select } from './select.js';
+import { type Selection, select } from './select.js';
 import { cholesky, inverseGram, type Scaled, scaleGram, solveScaled, spectrumOf } from './solve.js';
-import type { Candidate, FitOptions, FitWarning, HarmonicFit } from './types.js';
+import type { Candidate, FitOptions, HarmonicFit } from './types.js';
+import { warningsOf } from './warnings.js';
 
 // Smallest over largest eigenvalue of the scaled Gram matrix: below, the columns cannot be told apart.
 const REFUSED = 1e-10;
 const DROPPED = 1e-4; // where the choice is ours, a poorer one is not made
-const POOR = 1e4; // condition of the design that is worth a word
-const GAPS = 0.3;
 const REFINEMENTS = 2;
+
+/** Whether the choice of constituents is ours. */
+function ours({ constituents }: FitOptions): boolean {
+  return constituents === undefined || constituents === 'resolvable';
+}
 
 function designOf(
   taken: readonly Constituent[],
@@ -96,13 +100,12 @@ function* solvable(
   borrowed: readonly Borrowed[],
 ): Generator<Progress, Solvable, void> {
   let selection = select(options, record, borrowed);
-  const ours = options.constituents === undefined || options.constituents === 'resolvable';
   for (;;) {
     const design = designOf(selection.taken, borrowed, record, options);
     const count = design.order.length;
-    if (record.samples <= count || (ours && selection.taken.length === 0)) {
+    if (record.samples <= count || (ours(options) && selection.taken.length === 0)) {
       const wanted =
-        ours && selection.taken.length === 0
+        ours(options) && selection.taken.length === 0
           ? 'a record that holds one turn of a constituent'
           : `more than ${count} samples for ${count} unknowns`;
       throw new ComputationError(
@@ -123,7 +126,7 @@ function* solvable(
     const pair = weakestPair(design.order, weakest);
     // The list is in order of expected size: the smaller of the two goes.
     const name = selection.taken.filter((of) => pair.includes(of.name)).pop()?.name;
-    if (ours && ratio < DROPPED && name !== undefined) {
+    if (ours(options) && ratio < DROPPED && name !== undefined) {
       const beside = pair.find((one) => one !== name) as string;
       const reason = `cannot be told from ${beside} with these gaps and this sampling`;
       const left: Candidate = { name, decision: 'left', reason, beside };
@@ -142,44 +145,6 @@ function* solvable(
     }
     return { design, selection, normal, scaled, condition: Math.sqrt(1 / ratio) };
   }
-}
-
-function warningsOf(
-  record: FitRecord,
-  { design, selection, condition }: Solvable,
-  noise: readonly LineNoise[],
-  ours: boolean,
-): FitWarning[] {
-  const { length } = record.values;
-  const missing = length - record.samples;
-  const few = noise.filter(({ bins }) => bins > 0 && bins < 4).length;
-  const list: (FitWarning | false)[] = [
-    record.days < 27 && {
-      code: 'SHORT_RECORD',
-      message: `${record.days.toFixed(1)} days: less than a month, in which the Moon passes all its positions`,
-    },
-    missing > GAPS * length && {
-      code: 'MANY_GAPS',
-      message: `${missing} of ${length} samples are missing`,
-    },
-    condition > POOR && {
-      code: 'POORLY_CONDITIONED',
-      message: `condition of the design ${condition.toExponential(1)}: errors of some constants are large and correlated`,
-    },
-    few > 0 && {
-      code: 'FEW_SPECTRUM_BINS',
-      message: `${few} error bars rest on fewer than 4 bins of the residual's spectrum`,
-    },
-  ];
-  const weak = design.basis.nodal.leftOut;
-  if (weak.length > 0) {
-    list.push({
-      code: 'WEAK_DEGREE_2',
-      message: `lines of degree 3 left out for ${weak.join(', ')}: degree 2 is under 5 % of its maximum at this latitude`,
-    });
-  }
-  const close = ours ? [] : closePairs(selection.taken, record.days);
-  return [...list.filter((w): w is FitWarning => w !== false), ...close];
 }
 
 function* fitSteps(series: Series, options: FitOptions): Generator<Progress, HarmonicFit, void> {
@@ -227,7 +192,7 @@ function* fitSteps(series: Series, options: FitOptions): Generator<Progress, Har
   return {
     constants: documentOf(design, record, options, solution, covariance),
     covariance: { order: design.order, matrix: covariance },
-    residuals: { ...record.series, values: last.residuals } as Series,
+    residuals: { ...record.series, values: last.residuals },
     diagnostics: {
       samples: record.samples,
       missing: record.values.length - record.samples,
@@ -260,12 +225,7 @@ function* fitSteps(series: Series, options: FitOptions): Generator<Progress, Har
       })),
       effectiveSamples: Math.min(record.samples, sum / (noise[0] as LineNoise).density),
     },
-    warnings: warningsOf(
-      record,
-      ready,
-      noise,
-      options.constituents === undefined || options.constituents === 'resolvable',
-    ),
+    warnings: warningsOf(record, design, condition, noise, ours(options) ? [] : selection.taken),
   };
 }
 

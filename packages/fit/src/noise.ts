@@ -110,7 +110,7 @@ export function noiseBeside(
 /** Gaps taken out, times counted in hours from the middle. */
 export function residualOf(times: Float64Array, step: number, values: Float64Array): Residual {
   const kept: number[] = [];
-  for (let i = 0; i < values.length; i++) if (!Number.isNaN(values[i] as number)) kept.push(i);
+  for (let i = 0; i < values.length; i++) if (!Number.isNaN(values[i])) kept.push(i);
   const first = times[kept[0] as number] as number;
   const last = times[kept[kept.length - 1] as number] as number;
   const middle = (first + last) / 2;

@@ -87,9 +87,10 @@ export function readSteps(steps: FitOptions['steps'], from: Instant, to: Instant
 export function readChoice<T extends string>(
   value: T | undefined,
   path: string,
-  choices: readonly T[],
+  choices: readonly [T, ...T[]],
 ): T {
-  const chosen = value ?? (choices[0] as T);
+  const [usual] = choices;
+  const chosen = value ?? usual;
   if (choices.includes(chosen)) return chosen;
   throw new InputError(
     'UNKNOWN_CHOICE',

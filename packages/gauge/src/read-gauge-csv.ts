@@ -8,8 +8,11 @@ import type { GaugeRecord, ReadOptions } from './record.js';
 
 /** A stream of bytes: the host's own `ReadableStream<Uint8Array>` fits. @public */
 export interface ByteStreamLike {
+  /** Takes the stream for itself. */
   getReader(): {
+    /** The next piece, or the end. */
     read(): Promise<{ readonly done: boolean; readonly value?: Uint8Array | undefined }>;
+    /** Lets the rest go. */
     cancel(reason?: unknown): Promise<unknown>;
   };
 }
@@ -17,6 +20,7 @@ export interface ByteStreamLike {
 /** A file: the host's own `Blob` and `File` fit. @public */
 export interface BlobLike {
   readonly size: number;
+  /** Its bytes. */
   stream(): ByteStreamLike;
 }
 

@@ -58,7 +58,7 @@ function checkModel(model: NodalModel): void {
 export function nodalPlan(
   constituents: readonly Constituent[],
   model: NodalModel,
-  latitude?: Degrees | undefined,
+  latitude?: Degrees,
 ): NodalPlan {
   checkModel(model);
   const rules: NodalRule[] = [];

@@ -114,7 +114,7 @@ export function heightsAtTimes(
   plan: TidePlan,
   times: ArrayLike<number> | readonly InstantLike[],
 ): Float64Array {
-  const instants: Float64Array<ArrayBufferLike> = toTimes(times as ArrayLike<InstantLike>);
+  const instants: Float64Array = toTimes(times);
   const out = new Float64Array(instants.length);
   heightsInto(out, plan, { times: instants });
   return out;

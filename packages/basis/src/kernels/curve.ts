@@ -8,11 +8,16 @@
 import { sinCosInto } from '@staithe/core/trig';
 
 /**
- * Multiplies the cubics of a basis by the coefficients of a curve.
+ * Multiplies the cubics of a stretch by the coefficients of a curve.
  *
  * @param out - Written to: eight numbers a constituent.
  * @param cubics - Of a stretch.
  * @param coefficients - Level, then H cos G and H sin G of each constituent.
+ * @example
+ * const charged = new Float64Array(8);
+ * chargeInto(charged, Float64Array.of(1, 0, 0, 0, 0, 0, 0, 0), Float64Array.of(0, 2, 3));
+ * charged.slice(0, 2); // Float64Array.of(2, -3)
+ * @public
  */
 export function chargeInto(
   out: Float64Array,
@@ -31,12 +36,19 @@ export function chargeInto(
 }
 
 /**
+ * The curve and its first two derivatives at one instant, without the mean level.
+ *
  * @param out - Written to: h, h′ per ms, h″ per ms².
  * @param charged - Of {@link chargeInto}.
  * @param speeds - Radians per millisecond.
  * @param length - Milliseconds of the stretch.
  * @param offset - Milliseconds from its start.
  * @param pair - Scratch, length 2.
+ * @example
+ * const point = new Float64Array(3);
+ * curveInto(point, Float64Array.of(2, 0, 0, 0, 0, 0, 0, 0), Float64Array.of(1), 10, 0, new Float64Array(2));
+ * point; // Float64Array.of(2, 0, -2)
+ * @public
  */
 export function curveInto(
   out: Float64Array,
@@ -88,6 +100,11 @@ export function curveInto(
  * @param charged - Of {@link chargeInto}.
  * @param speeds - Radians per millisecond.
  * @param length - Milliseconds of the stretch.
+ * @example
+ * const bounds = new Float64Array(2);
+ * boundsInto(bounds, Float64Array.of(2, 0, 0, 0, 0, 0, 0, 0), Float64Array.of(3), 10);
+ * bounds; // Float64Array.of(18, 54)
+ * @public
  */
 export function boundsInto(
   out: Float64Array,

@@ -5,11 +5,18 @@
  */
 
 /**
+ * Adds the products of all pairs of columns to a Gram matrix.
+ *
  * @param gram - Added to: row-major, count × count, lower triangle.
  * @param columns - One row a column, `stride` apart.
  * @param count - Columns.
  * @param stride - Samples from one column to the next.
  * @param n - Samples.
+ * @example
+ * const sums = new Float64Array(4);
+ * rankUpdate(sums, Float64Array.of(1, 2, 3, 4), 2, 2, 2);
+ * sums; // Float64Array.of(5, 0, 11, 25)
+ * @public
  */
 export function rankUpdate(
   gram: Float64Array,
