@@ -17,7 +17,9 @@ const { rows, missing, extra, minutes, metres } = compareHighLow(
 console.log({ rows, missing, extra, minutes, metres });
 const names = extra.map((time) => time.slice(0, 16));
 if (rows !== 107273 || missing.length > 0 || names.join() !== LOST.join()) {
-  throw new Error(`expected every row and ${LOST.length} more, got ${rows} rows, ${missing.length} missing, ${names}`);
+  throw new Error(
+    `expected every row and ${LOST.length} more, got ${rows} rows, ${missing.length} missing, ${names}`,
+  );
 }
 if (!(Math.abs(minutes.mean) <= 0.05 && minutes.sd <= 0.43 && metres.sd <= 3.2e-3)) {
   throw new Error('spread beyond its bound');

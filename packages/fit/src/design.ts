@@ -10,7 +10,7 @@ import { degreesToRadians, type Instant, wrapDegrees } from '@staithe/core';
 import { cos, sin } from '@staithe/core/trig';
 
 /** Milliseconds in a year of 365.25 days, the year of secular rates. */
-export const YEAR = 31557600000;
+const YEAR = 31557600000;
 
 /** A borrowed constituent by its place in the basis. */
 export interface Fold {

@@ -16,7 +16,7 @@ import type { FitRecord } from './record.js';
 import type { FitOptions } from './types.js';
 
 /** The constants, fitted and borrowed. */
-export function constantsOf(
+function constantsOf(
   design: Design,
   solution: Float64Array,
   covariance: Float64Array,

@@ -27,7 +27,7 @@ export interface Residual {
 }
 
 /** |Σ r·e^{−iωt}|²/n at a speed in degrees per hour. */
-export function periodogramAt(
+function periodogramAt(
   { hours, values, step }: Residual,
   speed: number,
   pair: Float64Array,

@@ -64,7 +64,7 @@ export function cholesky({ matrix, count }: Scaled): Float64Array | undefined {
 }
 
 /** Solves L·Lᵀ·x = b in place. */
-export function solveInPlace(factor: Float64Array, count: number, b: Float64Array): void {
+function solveInPlace(factor: Float64Array, count: number, b: Float64Array): void {
   for (let i = 0; i < count; i++) {
     let sum = b[i] as number;
     for (let k = 0; k < i; k++) sum -= (factor[i * count + k] as number) * (b[k] as number);

@@ -1,0 +1,38 @@
+/**
+ * The caution that stands wherever heights, times or levels are printed.
+ * @module
+ */
+import { describe, InputError } from '@staithe/core';
+
+/** What is printed: predicted heights and times, access windows, or levels. @public */
+export type CautionKind = 'heights' | 'windows' | 'levels';
+
+const TEXTS: Readonly<Record<CautionKind, string>> = {
+  heights:
+    'Predictions leave out weather and are not for navigation by themselves. Official tables, notices and the local authority come first.',
+  windows:
+    'A predicted window leaves out weather, waves, squat and silting and is not for navigation by itself. Official tables, notices and the local authority come first.',
+  levels:
+    'These levels follow from the data named here. Datums for charting, boundaries or construction are the call of a licensed surveyor or hydrographer.',
+};
+
+/**
+ * The caution in one or two sentences.
+ *
+ * @param kind - What is printed beside it.
+ * @returns Plain text.
+ * @throws InputError `UNKNOWN_CHOICE`, path `kind`.
+ * @example
+ * caution('heights').includes('not for navigation'); // true
+ * @public
+ */
+export function caution(kind: CautionKind): string {
+  if (!Object.hasOwn(TEXTS, kind)) {
+    throw new InputError(
+      'UNKNOWN_CHOICE',
+      'kind',
+      `expected heights, windows or levels, got ${describe(kind)}`,
+    );
+  }
+  return TEXTS[kind];
+}
