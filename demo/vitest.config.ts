@@ -2,5 +2,5 @@ import { defineProject } from 'vitest/config';
 
 export default defineProject({
   resolve: { tsconfigPaths: true },
-  test: { name: 'demo', include: ['test/**/*.test.ts'] },
+  test: { name: 'demo', include: ['test/**/*.test.{ts,mjs}'] },
 });

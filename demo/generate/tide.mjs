@@ -34,7 +34,7 @@ function blocksOf({ start, step, count }) {
  * @param {{ start: number, step: number, count: number }} grid
  * @returns {{ re: Float64Array, im: Float64Array }} Metres.
  */
-export function speciesSignal(place, lines, species, grid) {
+function speciesSignal(place, lines, species, grid) {
   const re = new Float64Array(grid.count);
   const im = new Float64Array(grid.count);
   const blocks = blocksOf(grid);
