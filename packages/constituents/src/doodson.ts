@@ -64,7 +64,7 @@ export function formatDoodsonNumber(numbers: DoodsonNumbers): string {
 /**
  * Reads XDO letters: six for the multipliers, and a seventh for the quarter turns.
  *
- * @param text - Six or seven letters; Z is 0, A to P are 1 to 16, Y to Q are −1 to −9. The first, the species, is
+ * @param text - Six or seven letters; Z is 0, A to L are 1 to 12, Y to M are −1 to −13. The first, the species, is
  *   never negative: there A to Y are 1 to 25.
  * @returns The multipliers and the quarter turns (0 where the seventh letter is absent).
  * @throws InputError `BAD_NUMBER`, path `xdo`.
@@ -85,7 +85,7 @@ export function parseXdo(text: string): {
   }
   const values = Array.from(text, (letter, i) => {
     const place = letter === 'Z' ? 0 : letter.charCodeAt(0) - 64;
-    return i > 0 && place > 16 ? place - 26 : place;
+    return i > 0 && place > 12 ? place - 26 : place;
   });
   const doodsonNumbers = values.slice(0, 6) as unknown as DoodsonNumbers;
   return { doodsonNumbers, quarterTurns: values[6] ?? 0 };
@@ -94,7 +94,7 @@ export function parseXdo(text: string): {
 /**
  * Writes XDO letters.
  *
- * @param constituent - Six multipliers (the first 0 to 25, the others −9 to 16) and quarter turns.
+ * @param constituent - Six multipliers (the first 0 to 25, the others −13 to 12) and quarter turns.
  * @returns Seven letters.
  * @throws InputError `OUT_OF_RANGE`, path `doodsonNumbers[i]` or `quarterTurns`.
  * @example
@@ -107,11 +107,11 @@ export function formatXdo(constituent: {
 }): string {
   const values = [...constituent.doodsonNumbers, constituent.quarterTurns];
   const letters = values.map((n, i) => {
-    if (Number.isInteger(n) && (i === 0 ? n >= 0 && n <= 25 : n >= -9 && n <= 16)) {
+    if (Number.isInteger(n) && (i === 0 ? n >= 0 && n <= 25 : n >= -13 && n <= 12)) {
       return n === 0 ? 'Z' : String.fromCharCode(n > 0 ? 64 + n : 90 + n);
     }
     const path = i < 6 ? `doodsonNumbers[${i}]` : 'quarterTurns';
-    const range = i === 0 ? '0 to 25' : '-9 to 16';
+    const range = i === 0 ? '0 to 25' : '-13 to 12';
     throw new InputError(
       'OUT_OF_RANGE',
       path,

@@ -217,17 +217,17 @@ describe('the potential', () => {
   });
 
   it('gives each named constituent its quarter turns by the sign of its line', () => {
-    // The trade drops the 180° of Mf, Mm and their kin; Sa and S1 (weather) have no line of this list.
-    const dropped = new Set(['Ssa', 'MSm', 'Mm', 'MSf', 'Mf', 'Mtm', 'MSqm']);
+    // The trade drops the 180° of Mf, Mm and their kin; Sa, Sta and S1 (weather) have no line of this list.
+    const dropped = new Set(['Ssa', 'MSm', 'Mm', 'MSf', 'Mf', 'MStm', 'Mtm', 'MSqm', 'Mqm']);
     let checked = 0;
     for (const { name, kind, doodsonNumbers, quarterTurns, species } of listConstituents()) {
       if (kind === 'compound' || dropped.has(name)) continue;
-      const degree = species > 2 ? 3 : 2;
+      const degree = species > 2 || name === 'M1C' ? 3 : 2;
       const line = lines.find(
         (l) => l.degree === degree && l.doodsonNumbers.join() === doodsonNumbers.join(),
       );
       if (!line) {
-        expect(['Sa', 'S1']).toContain(name);
+        expect(['Sa', 'Sta', 'S1']).toContain(name);
         continue;
       }
       const cosine = (degree + species) % 2 === 0;

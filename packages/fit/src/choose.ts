@@ -18,7 +18,10 @@ const LEAVE = 0.97;
 const SMALLEST = 2e-3; // m in the potential: below this a line is not proposed by itself
 // Expected sizes where the potential says little, metres in its scale: seasonal and daily weather, shallow water.
 const WEATHER_SIZE = 0.012;
+const WEATHER = ['Sa', 'Ssa', 'S1'];
 const SHALLOW_SIZE = 1e-3;
+// Lines within the group of a constituent that is proposed: M1 and L2 stand for them too.
+const VARIANTS = ['M1B', 'M1C', 'L2B'];
 // Shallow-water terms proposed by themselves, in the order of their usual size (common practice).
 const SHALLOW = 'M4 MS4 MN4 M6 2MS6 MK3 2MK3 M8 S4 S6 2SM2 MSN2 SO3 SK3 MK4 2MN6 2SM6 3MS8';
 
@@ -42,9 +45,9 @@ export function candidatesFor(nodalModel: NodalModel): { expected: Expected[]; l
     );
     const size = Math.max(
       Math.abs(line?.amplitude ?? 0),
-      of.kind === 'meteorological' ? WEATHER_SIZE : 0,
+      WEATHER.includes(of.name) ? WEATHER_SIZE : 0,
     );
-    if (size < SMALLEST) continue;
+    if (size < SMALLEST || VARIANTS.includes(of.name)) continue;
     try {
       nodalPlan([of], nodalModel);
       expected.push({ of, size });

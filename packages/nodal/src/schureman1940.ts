@@ -143,7 +143,7 @@ const FORMULAS: Readonly<Record<string, Formula>> = /* @__PURE__ */ Object.freez
 
 // Which formula a constituent takes where it has none of its own; '1' is f = 1, u = 0.
 const SHARED =
-  'MSm=Mm Mtm=Mf MSqm=Mf Q1=O1 2Q1=O1 SIG1=O1 RHO1=O1 CHI1=J1 THE1=J1 UPS1=OO1 N2=M2 2N2=M2 MU2=M2 NU2=M2 EPS2=M2 ' +
+  'SAA=1 MSm=Mm MStm=Mf Mtm=Mf MSqm=Mf Mqm=Mf Q1=O1 2Q1=O1 SIG1=O1 RHO1=O1 CHI1=J1 THE1=J1 UPS1=OO1 N2=M2 2N2=M2 MU2=M2 NU2=M2 EPS2=M2 ' +
   'H1=M2 H2=M2 LAM2=M2 P1=1 PI1=1 PSI1=1 PHI1=1 S2=1 T2=1 R2=1';
 
 /**

@@ -69,10 +69,15 @@ export function sideLines(
     );
   }
   const numbers = of.doodsonNumbers;
-  const own: 2 | 3 = numbers[0] > 2 ? 3 : 2;
-  const group = lines.filter((line) => line.degree === own && shares(line, numbers));
-  const main = group.find(({ doodsonNumbers }) => doodsonNumbers.every((n, i) => n === numbers[i]));
+  const mainOf = (degree: 2 | 3): PotentialLine | undefined =>
+    lines.find(
+      (line) => line.degree === degree && line.doodsonNumbers.every((n, i) => n === numbers[i]),
+    );
+  // M3 and M1C stand on lines of degree 3 alone.
+  const main = mainOf(2) ?? mainOf(3);
   if (!main) return { lines: [], leftOut: false };
+  const own = main.degree;
+  const group = lines.filter((line) => line.degree === own && shares(line, numbers));
   const side = (line: PotentialLine, weight: number, turn: Degrees): SideLine => ({
     degree: line.degree,
     perigee: line.doodsonNumbers[3] - numbers[3],
