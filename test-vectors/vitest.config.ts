@@ -1,6 +1,3 @@
-import { defineProject } from 'vitest/config';
+import { projectTests } from '../tools/build/vitest-preset.mjs';
 
-export default defineProject({
-  resolve: { tsconfigPaths: true },
-  test: { name: 'test-vectors', include: ['test/**/*.test.{ts,mjs}'] },
-});
+export default projectTests('test-vectors');

@@ -1,7 +1,3 @@
-import { defineProject } from 'vitest/config';
+import { projectTests } from '../../tools/build/vitest-preset.mjs';
 
-// Tests read the sources of the sibling packages (tsconfig "paths"), so they need no build.
-export default defineProject({
-  resolve: { tsconfigPaths: true },
-  test: { name: 'arguments', include: ['test/**/*.test.ts'] },
-});
+export default projectTests('arguments');

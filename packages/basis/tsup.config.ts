@@ -1,3 +1,3 @@
 import { packageBuild } from '../../tools/build/tsup-preset.mjs';
 
-export default packageBuild();
+export default packageBuild(['src/index.ts', 'src/kernels.ts']);

@@ -45,7 +45,7 @@ function exportsOf(file) {
 }
 
 /** Entries of a package besides its root, by the file they stand in. */
-const ENTRIES = { core: ['trig', 'long-work'] };
+const ENTRIES = { core: ['trig', 'long-work'], basis: ['kernels'] };
 
 function reExports(name) {
   const exported = (word, names, from) => {

@@ -111,9 +111,9 @@ describe('schureman1940', () => {
       // The bounds are rounded to the last printed digit.
       const abs = bounds[key] + 0.0005;
       const seen = expectAngleWithin(got, want, { abs }, key);
-      recordAccuracy('schureman-derived-factors', {
+      recordAccuracy('erfa-fundamental-arguments', {
         capability: `longitude ${key} of Schureman (1940)`,
-        compared: 'ERFA, every 500 days 1850 to 2150 (no ΔT)',
+        compared: 'every 500 days 1850 to 2150, TT read as the civil time of SP 98',
         ...seen,
         tolerance: abs,
         unit: 'degrees',

@@ -16,6 +16,8 @@ import {
   type Instant,
   type NodalHold,
   type NodalModel,
+  readSampling,
+  refuse,
   type Sampling,
   toInstant,
 } from '@staithe/core';
@@ -43,7 +45,7 @@ export interface Basis {
   /** Radians per millisecond, length K. */
   readonly speeds: Float64Array;
   /** Doodson numbers, six a constituent. */
-  readonly multipliers: Int8Array;
+  readonly multipliers: Int16Array;
   /** Degrees that V carries beyond the multipliers, length K. */
   readonly turns: Float64Array;
   /** What is left of each amplitude in the mean over a sample, length K. */
@@ -86,11 +88,16 @@ function meanResponse(speed: number, meanOver: number): number {
  * @public
  */
 export function makeBasis(options: BasisOptions): Basis {
-  const { nodalLatitude, sampling, argumentModel = 'iers2010', nodalModel = 'potential' } = options;
+  const { nodalLatitude, argumentModel = 'iers2010', nodalModel = 'potential' } = options;
+  if (argumentModel !== 'iers2010' && argumentModel !== 'schureman1940') {
+    refuse('UNKNOWN_CHOICE', 'argumentModel', 'iers2010 or schureman1940', argumentModel);
+  }
+  const { sampling } = readSampling(options.sampling);
   const list = options.constituents.map((c) => (typeof c === 'string' ? constituent(c) : c));
   const names = list.map(({ name }) => name);
+  const seen = new Set<string>();
   names.forEach((name, i) => {
-    if (names.indexOf(name) === i) return;
+    if (seen.size < seen.add(name).size) return;
     throw new InputError(
       'DUPLICATE',
       `constituents[${i}]`,
@@ -111,7 +118,7 @@ export function makeBasis(options: BasisOptions): Basis {
   return {
     names,
     speeds,
-    multipliers: Int8Array.from(list.flatMap(({ doodsonNumbers }) => [...doodsonNumbers])),
+    multipliers: Int16Array.from(list.flatMap(({ doodsonNumbers }) => [...doodsonNumbers])),
     turns: Float64Array.from(list, ({ quarterTurns }) => quarterTurns * 90),
     response: speeds.map((speed) => meanResponse(speed, meanOver)),
     delay: place * meanOver,

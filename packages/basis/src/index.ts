@@ -3,8 +3,5 @@
  * @packageDocumentation
  */
 export { type Basis, type BasisOptions, makeBasis } from './basis.js';
-export { boundsInto, chargeInto, curveInto } from './kernels/curve.js';
-export { rankUpdate } from './kernels/rank-update.js';
 export { columnCount, gram, projectInto, synthesizeInto } from './operators.js';
-export { makeStretcher, type Stretch, type Stretcher } from './stretches.js';
-export { columnsInto, gridCount, TILE, type Tile, type TimeGrid, tiles } from './tiles.js';
+export type { TimeGrid } from './tiles.js';

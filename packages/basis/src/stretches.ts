@@ -4,8 +4,7 @@
  *
  * Q carries f, u and the departure of V from constant speed: all of it slow (periods of 3 years and more). It is exact
  * on nodes two days apart, whose places do not depend on the span asked for, and Hermite between them with slopes from
- * five nodes, so z and z′ are continuous. With ω = 2π/1000 d and two-day nodes the error is below
- * (2ω)⁴·(1/384 + 4/(27·30)) ~ 2e-10 of the slow part's amplitude (docs/basis.md).
+ * five nodes, so z and z′ are continuous; docs/basis.md derives the error, below 1e-10 of the slow part's amplitude.
  * In `calendar-year` a stretch is a UTC year: V on 1 January, f and u on 2 July 12:00, constant speeds.
  * @module
  */
@@ -31,7 +30,7 @@ export type Stretcher = (t: Instant) => Stretch;
 const NODE = 2 * DAY;
 const BEFORE = 2; // nodes needed before a stretch
 const NODES = 6;
-// M1 in official yearly tables: V on 1 January without p, so p is taken off again there (design: conventions).
+// M1 in official yearly tables: V on 1 January without p, so p is taken off again there (docs/conventions.md).
 const M1 = 'M1';
 
 /** f·e^{i(V + u)}, response included, of all constituents: pairs Re, Im. */

@@ -14,7 +14,7 @@ import { directHeight, directPhasors } from './reference/direct-sum.js';
 
 const NAMES =
   'M2 S2 N2 K2 K1 O1 P1 Q1 J1 M1 OO1 L2 NU2 T2 Mf Mm Sa Ssa M3 M4 MS4 2MK3 2SM2 M6 M8'.split(' ');
-const DIRECT = 1e-8; // m, against the direct sum for metre amplitudes (performance.md)
+const DIRECT = 1e-8; // m, against the direct sum for metre amplitudes
 const ADJOINT = 1e-12; // of the product of the norms
 
 const model = fc.record({

@@ -6,14 +6,8 @@ import {
   recordAccuracy,
 } from '@staithe/test-vectors';
 import { describe, expect, it } from 'vitest';
-import {
-  columnCount,
-  gram,
-  makeBasis,
-  makeStretcher,
-  projectInto,
-  synthesizeInto,
-} from '../src/index.js';
+import { columnCount, gram, makeBasis, projectInto, synthesizeInto } from '../src/index.js';
+import { makeStretcher } from '../src/kernels.js';
 
 function refusal(run: () => unknown): InputError {
   try {

@@ -4,10 +4,12 @@
  * A name is a row of members, each a letter (or NU, MU, LAM) with an optional count before it, then the species.
  * Members add up from the left; from some member on they are taken away, so that the species comes out: 2SM2 is
  * 2·S2 − M2, MNS2 is M2 + N2 − S2. K stands for K1 or K2, whichever makes the species. A single member gives
- * overtides: M4 is 2·M2. A name with two readings is refused with both. Common practice.
+ * overtides: M4 is 2·M2. Where no such reading makes the species, the first count stands for all members: 2MS8 is
+ * 2(MS)8. A name with two readings is refused with both. Common practice.
  * @module
  */
-import { describe, InputError } from '@staithe/core';
+import { describe, InputError, refuse } from '@staithe/core';
+import { LISTED_COMPOUNDS } from './table.js';
 
 /** One member of a compound tide and how often it counts; negative where it is taken away. @public */
 export interface CompoundMember {
@@ -90,6 +92,15 @@ function readings(
   return out;
 }
 
+/** The count before the first member for all of them: 2MS8 is 2(MS)8, where 2·M2 + S2 makes no species 8. */
+function spread(
+  members: readonly { letter: string; count: number }[],
+): { letter: string; count: number }[] {
+  const count = members[0]?.count ?? 1;
+  const plain = members.slice(1).every((member) => member.count === 1);
+  return plain && count > 1 ? members.map(({ letter }) => ({ letter, count })) : [];
+}
+
 /** A reading in words: `2·S2 − M2`. */
 function inWords(members: readonly CompoundMember[]): string {
   return members
@@ -115,7 +126,10 @@ export function parseCompound(name: string): readonly CompoundMember[] | undefin
   const parts = /^(.*?[A-Z)])(\d{1,2})$/.exec(name);
   const members = parts && split(parts[1] as string);
   if (!members) return undefined;
-  const found = readings(members, Number(parts[2]));
+  const species = Number(parts[2]);
+  const plain = readings(members, species);
+  const wide = plain.length === 0 ? spread(members) : [];
+  const found = wide.length > 1 ? readings(wide, species) : plain;
   if (found.length < 2) return found[0];
   throw new InputError(
     'AMBIGUOUS_CONSTITUENT',
@@ -123,4 +137,37 @@ export function parseCompound(name: string): readonly CompoundMember[] | undefin
     `expected one reading, got ${describe(name)}: ${found.map(inWords).join(' or ')}`,
     { readings: found },
   );
+}
+
+/**
+ * Writes the name of a compound tide: the listed one where there is one, else members that are added, then those taken
+ * away, then the species.
+ *
+ * @param members - As {@link parseCompound} gives them.
+ * @returns A name that reads back as these members.
+ * @throws InputError `AMBIGUOUS_CONSTITUENT` or `UNKNOWN_CONSTITUENT`, path `composition`, where no name does.
+ * @example
+ * formatCompound([{ name: 'S2', multiplicity: 2 }, { name: 'M2', multiplicity: -1 }]); // '2SM2'
+ * @public
+ */
+export function formatCompound(members: readonly CompoundMember[]): string {
+  const key = (list: readonly CompoundMember[] | undefined): string =>
+    (list ?? [])
+      .map(({ name, multiplicity }) => `${multiplicity}${name}`)
+      .sort()
+      .join();
+  const wanted = key(members);
+  const listed = LISTED_COMPOUNDS.split(' ').find((name) => key(parseCompound(name)) === wanted);
+  if (listed) return listed;
+  const species = members.reduce((sum, m) => sum + m.multiplicity * speciesOf(m.name), 0);
+  const ordered = [...members].sort(
+    (a, b) => Math.sign(b.multiplicity) - Math.sign(a.multiplicity),
+  );
+  const body = ordered.map(({ name, multiplicity }) => {
+    const count = Math.abs(multiplicity);
+    return `${count > 1 && members.length > 1 ? count : ''}${name.slice(0, -1)}`;
+  });
+  const name = `${body.join('')}${species}`;
+  if (members.length > 0 && key(parseCompound(name)) === wanted) return name;
+  return refuse('UNKNOWN_CONSTITUENT', 'composition', 'members that a compound name can say', name);
 }

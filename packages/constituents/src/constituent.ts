@@ -89,6 +89,10 @@ export interface Constituent {
   /** Degrees per mean solar hour at J2000. */
   readonly speed: number;
   readonly kind: 'astronomical' | 'compound' | 'meteorological';
+  /** Other spellings of the trade. */
+  readonly aliases: readonly string[];
+  /** The lines of the potential that it stands for share these multipliers of τ, s, h and p_s. */
+  readonly group: readonly [n1: number, n2: number, n3: number, n6: number];
   /** The members of a compound. */
   readonly composition?: readonly CompoundMember[] | undefined;
   readonly source: string;
@@ -96,6 +100,7 @@ export interface Constituent {
 
 const SOURCE = 'Doodson (1921); Schureman (1940), table 2; sign after Cartwright and Edden (1973)';
 const J2000_MS = 946728000000;
+const LONGEST = 24; // letters of a name that near ones are sought for
 
 /** The named rows as a map from name to letters; `*` marks the meteorological ones. */
 function namedRows(): Map<string, { letters: string; meteorological: boolean }> {
@@ -128,6 +133,11 @@ function make(
     species: doodsonNumbers[0],
     speed: speedOf(doodsonNumbers),
     kind,
+    aliases: ALIASES.split(' ').flatMap((row) => {
+      const [alias, of] = row.split('=') as [string, string];
+      return of === name ? [alias] : [];
+    }),
+    group: [doodsonNumbers[0], doodsonNumbers[1], doodsonNumbers[2], doodsonNumbers[5]],
     ...(composition ? { composition } : {}),
     source: composition ? 'sum of its members (common practice)' : SOURCE,
   };
@@ -159,6 +169,8 @@ function lookUp(name: string, rows: ReturnType<typeof namedRows>): Constituent |
   }
   // Quarter turns count modulo 4; −1, 0, 1, 2 as in the table.
   const wrapped = ((((turns + 1) % 4) + 4) % 4) - 1;
+  // A difference that runs backwards or not at all is no oscillation of its own: SM0, not MS0.
+  if (!(speedOf(numbers as unknown as DoodsonNumbers) > 0)) return undefined;
   return make(name, numbers as unknown as DoodsonNumbers, wrapped, 'compound', composition);
 }
 
@@ -198,10 +210,11 @@ function nearNames(name: string, rows: ReturnType<typeof namedRows>): string[] {
  */
 export function constituent(name: ConstituentName): Constituent {
   const rows = namedRows();
-  const alias = ` ${ALIASES} `.split(` ${name}=`)[1]?.split(' ')[0];
-  const found = typeof name === 'string' ? lookUp(alias ?? name, rows) : undefined;
+  const text = typeof name === 'string' ? name : '';
+  const alias = ALIASES.split(' ').find((row) => row.startsWith(`${text}=`));
+  const found = lookUp(alias?.slice(text.length + 1) ?? text, rows);
   if (found) return found;
-  const near = typeof name === 'string' ? nearNames(name, rows) : [];
+  const near = text.length > LONGEST ? [] : nearNames(text, rows);
   const hint = near.length > 0 ? ` (near names: ${near.join(', ')})` : '';
   throw new InputError(
     'UNKNOWN_CONSTITUENT',
@@ -214,7 +227,7 @@ export function constituent(name: ConstituentName): Constituent {
 /**
  * The listed constituents, built on call.
  *
- * @param filter - Keep those of this species or kind.
+ * @param filter - Keep those of this species, kind or Doodson numbers.
  * @returns A new list: lines of the potential first, then compounds.
  * @example
  * listConstituents({ species: 3, kind: 'astronomical' }).length; // 1
@@ -224,6 +237,7 @@ export function listConstituents(
   filter: {
     readonly species?: number | undefined;
     readonly kind?: Constituent['kind'] | undefined;
+    readonly doodsonNumbers?: DoodsonNumbers | undefined;
   } = {},
 ): readonly Constituent[] {
   const rows = namedRows();
@@ -231,8 +245,10 @@ export function listConstituents(
   return names
     .map((name) => lookUp(name, rows) as Constituent)
     .filter(
-      ({ species, kind }) =>
-        species === (filter.species ?? species) && kind === (filter.kind ?? kind),
+      ({ species, kind, doodsonNumbers }) =>
+        species === (filter.species ?? species) &&
+        kind === (filter.kind ?? kind) &&
+        doodsonNumbers.join() === (filter.doodsonNumbers ?? doodsonNumbers).join(),
     );
 }
 

@@ -5,7 +5,7 @@
  * the extended form in letters (Z is 0, A is 1, Y is −1) with a seventh for the quarter turns: common practice.
  * @module
  */
-import { describe, InputError } from '@staithe/core';
+import { refuse } from '@staithe/core';
 
 /** Multipliers of τ, s, h, p, N′, p_s. @public */
 export type DoodsonNumbers = readonly [number, number, number, number, number, number];
@@ -25,11 +25,7 @@ const DIGITS = '0123456789ABCDEFGHIJKLMNOPQRSTUVWXYZ';
 export function parseDoodsonNumber(text: string): DoodsonNumbers {
   const digits = /^([0-9A-Z]{3})\.?([0-9A-Z]{3})$/.exec(text);
   if (!digits) {
-    throw new InputError(
-      'BAD_NUMBER',
-      'doodsonNumber',
-      `expected six digits or letters like 255.555, got ${describe(text)}`,
-    );
+    refuse('BAD_NUMBER', 'doodsonNumber', 'six digits or letters like 255.555', text);
   }
   const numbers = Array.from(
     `${digits[1]}${digits[2]}`,
@@ -41,21 +37,22 @@ export function parseDoodsonNumber(text: string): DoodsonNumbers {
 /**
  * Writes a Doodson number.
  *
- * @param numbers - Six multipliers: the first 0 to 35, the others −5 to 30.
+ * @param of - A constituent, or its six multipliers: the first 0 to 35, the others −5 to 30.
  * @returns Text such as `255.555`.
  * @throws InputError `OUT_OF_RANGE`, path `doodsonNumbers[i]`.
  * @example
  * formatDoodsonNumber([2, -1, 0, 1, 0, 0]); // '245.655'
  * @public
  */
-export function formatDoodsonNumber(numbers: DoodsonNumbers): string {
+export function formatDoodsonNumber(
+  of: DoodsonNumbers | { readonly doodsonNumbers: DoodsonNumbers },
+): string {
+  const numbers = 'doodsonNumbers' in of ? of.doodsonNumbers : of;
   const text = numbers.map((n, i) => {
-    const digit = DIGITS[n + (i > 0 ? 5 : 0)];
-    if (digit) return digit;
-    throw new InputError(
-      'OUT_OF_RANGE',
-      `doodsonNumbers[${i}]`,
-      `expected a whole number from ${i > 0 ? '-5 to 30' : '0 to 35'}, got ${describe(n)}`,
+    const range = i > 0 ? '-5 to 30' : '0 to 35';
+    return (
+      DIGITS[n + (i > 0 ? 5 : 0)] ??
+      refuse('OUT_OF_RANGE', `doodsonNumbers[${i}]`, `a whole number from ${range}`, n)
     );
   });
   return `${text.slice(0, 3).join('')}.${text.slice(3).join('')}`;
@@ -77,11 +74,7 @@ export function parseXdo(text: string): {
   readonly quarterTurns: number;
 } {
   if (!/^[A-Z]{6,7}$/.test(text)) {
-    throw new InputError(
-      'BAD_NUMBER',
-      'xdo',
-      `expected six or seven letters, got ${describe(text)}`,
-    );
+    refuse('BAD_NUMBER', 'xdo', 'six or seven letters', text);
   }
   const values = Array.from(text, (letter, i) => {
     const place = letter === 'Z' ? 0 : letter.charCodeAt(0) - 64;
@@ -112,11 +105,7 @@ export function formatXdo(constituent: {
     }
     const path = i < 6 ? `doodsonNumbers[${i}]` : 'quarterTurns';
     const range = i === 0 ? '0 to 25' : '-13 to 12';
-    throw new InputError(
-      'OUT_OF_RANGE',
-      path,
-      `expected a whole number from ${range}, got ${describe(n)}`,
-    );
+    return refuse('OUT_OF_RANGE', path, `a whole number from ${range}`, n);
   });
   return letters.join('');
 }

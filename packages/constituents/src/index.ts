@@ -2,7 +2,7 @@
  * The frequencies of the tide: constituents by name, compound tides, Doodson numbers, and the lines of the potential.
  * @packageDocumentation
  */
-export { type CompoundMember, parseCompound } from './compound.js';
+export { type CompoundMember, formatCompound, parseCompound } from './compound.js';
 export {
   type Constituent,
   type ConstituentName,
@@ -18,4 +18,5 @@ export {
   parseDoodsonNumber,
   parseXdo,
 } from './doodson.js';
+export { constituentsNear, groupsResolvableIn, separationTime } from './near.js';
 export { type PotentialLine, potentialLines } from './potential.js';

@@ -34,6 +34,7 @@ export { fromGreenwichPhaseLag, type PhaseConvention, toGreenwichPhaseLag } from
 export {
   checkSeries,
   fromJson,
+  readSampling,
   type SampledSeries,
   type Sampling,
   sampledSeries,
@@ -59,6 +60,7 @@ export {
   toInstant,
   toSpan,
   toStep,
+  YEAR,
 } from './time.js';
 export {
   feetFromMetres,

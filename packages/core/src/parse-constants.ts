@@ -84,7 +84,8 @@ function checkLeaf(rule: string, value: unknown, path: string, add: Add): void {
     const key = (path.split('.').pop() as string).toUpperCase();
     const code = /^(FORMAT|VERSION|UNIT)$/.test(key) ? `UNKNOWN_${key}` : 'UNKNOWN_CHOICE';
     const choices = rest.split('|');
-    if (choices.some((choice) => choice === value || Number(choice) === value)) return;
+    const type = key === 'VERSION' ? 'number' : 'string';
+    if (typeof value === type && choices.includes(String(value))) return;
     add(path, choices.join(' or '), value, code as InputErrorCode);
   } else if (kind === 'n') {
     const [low, high] = rest.split(',').map((end) => (end ? Number(end) : undefined));
@@ -126,10 +127,10 @@ function check(rule: Rule, value: unknown, path: string, add: Add): void {
 
 /** What a schema cannot say: one entry a name, and a covariance of the right length. */
 function checkWhole({ constituents, uncertainty }: HarmonicConstants, add: Add): void {
-  const names = constituents.map(({ name }) => name);
-  names.forEach((name, i) => {
-    if (names.indexOf(name) < i)
-      add(`constituents[${i}].name`, 'each name once', name, 'DUPLICATE');
+  const seen = new Set<string>();
+  constituents.forEach(({ name }, i) => {
+    if (seen.has(name)) add(`constituents[${i}].name`, 'each name once', name, 'DUPLICATE');
+    seen.add(name);
   });
   const count = uncertainty?.order.length ?? 0;
   const length = (count * (count + 1)) / 2;

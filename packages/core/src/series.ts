@@ -3,7 +3,7 @@
  * @module
  */
 import { refuse } from './errors.js';
-import { type Instant, type InstantLike, toInstant, toStep } from './time.js';
+import { type Instant, type InstantLike, toInstant, toStep, YEAR } from './time.js';
 
 /** Each value is a mean over this long, stamped there. Absent: instantaneous values. @public */
 export interface Sampling {
@@ -61,11 +61,21 @@ function readValues(values: ArrayLike<number | null>): Float64Array {
   return out;
 }
 
-function readSampling(sampling: Sampling | undefined): { sampling?: Sampling } {
+/**
+ * Checks how samples were taken.
+ *
+ * @param sampling - Or nothing: instantaneous values.
+ * @returns An object with a copy of it, or an empty one.
+ * @throws InputError `OUT_OF_RANGE`, path `sampling.meanOver`; `UNKNOWN_CHOICE`, path `sampling.stamp`.
+ * @example
+ * readSampling(undefined); // {}
+ * @public
+ */
+export function readSampling(sampling: Sampling | undefined): { sampling?: Sampling } {
   if (!sampling) return {};
   const { meanOver, stamp } = sampling;
-  if (!(meanOver > 0 && meanOver < Infinity)) {
-    refuse('OUT_OF_RANGE', 'sampling.meanOver', 'milliseconds above 0', meanOver);
+  if (!(meanOver > 0 && meanOver <= YEAR)) {
+    refuse('OUT_OF_RANGE', 'sampling.meanOver', 'milliseconds above 0, up to a year', meanOver);
   }
   if (!['start', 'middle', 'end'].includes(stamp)) {
     refuse('UNKNOWN_CHOICE', 'sampling.stamp', 'start, middle or end', stamp);

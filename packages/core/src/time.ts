@@ -25,6 +25,9 @@ export const HOUR = 3600000;
 /** Milliseconds in a day. @public */
 export const DAY = 86400000;
 
+/** Milliseconds in a year of 365.25 days, the year of secular rates. @public */
+export const YEAR = 31557600000;
+
 /** 1700-01-01T00:00Z, the earliest instant taken. @public */
 export const EARLIEST: Instant = -8520336000000;
 /** 2201-01-01T00:00Z, the latest instant taken. @public */
@@ -47,7 +50,8 @@ function parseInstant(text: string, path: string): Instant {
     refuse('NO_TIME_ZONE', path, 'Z or an offset after the time', text);
   if (second === '60') refuse('LEAP_SECOND', path, 'seconds from 00 to 59', text);
   const day = Date.parse(date); // a date alone is read as UTC by every engine
-  const local = day + +hour * HOUR + +(minute as string) * MINUTE + +second * SECOND;
+  const milliseconds = fraction ? +`0.${fraction.slice(1)}` * SECOND : 0;
+  const local = day + +hour * HOUR + +(minute as string) * MINUTE + +second * SECOND + milliseconds;
   if (
     Number.isNaN(day) ||
     !new Date(day).toISOString().startsWith(date) ||
@@ -60,8 +64,7 @@ function parseInstant(text: string, path: string): Instant {
     refuse('BAD_TIME', path, 'a date and time that exist', text);
   }
   const offset = +`${sign ?? '+'}1` * (+offsetHour * HOUR + +offsetMinute * MINUTE);
-  const milliseconds = fraction ? +`0.${fraction.slice(1)}` * SECOND : 0;
-  return inRange(local + milliseconds - offset, path, text);
+  return inRange(local - offset, path, text);
 }
 
 /**

@@ -55,6 +55,7 @@ const accepted: [string, unknown][] = [
 const refused: [string, unknown, string, string][] = [
   ['feet', { ...good, unit: 'ft' }, 'UNKNOWN_UNIT', 'unit'],
   ['version 2', { ...good, version: 2, nodalModel: 'newer' }, 'UNKNOWN_VERSION', 'version'],
+  ['version as text', { ...good, version: '1' }, 'UNKNOWN_VERSION', 'version'],
   ['another format', { ...good, format: 'other' }, 'UNKNOWN_FORMAT', 'format'],
   ['currents', { ...good, quantity: 'current' }, 'UNKNOWN_CHOICE', 'quantity'],
   [

@@ -25,6 +25,7 @@ export interface Run {
 const SMOOTH_BELOW = 30 * MINUTE;
 const HALF_WINDOW = 45 * MINUTE;
 const LONGEST_GAP = 3 * HOUR;
+const UNEVEN = 0.05; // of a step
 
 /** Cuts a record at gaps longer than three hours; shorter ones are stepped over. */
 export function runsOf(times: Float64Array, values: Float64Array): Run[] {
@@ -49,16 +50,34 @@ export function runsOf(times: Float64Array, values: Float64Array): Run[] {
   return out;
 }
 
+/** The middle one of the steps between samples. */
+function usualStep(times: Float64Array): number {
+  const steps = times
+    .slice(1)
+    .map((t, i) => t - (times[i] as number))
+    .sort();
+  return steps[steps.length >> 1] as number;
+}
+
 /** Quadratic smoothing of samples closer than half an hour. */
 function smooth({ times, values }: Run): Run {
-  const step = ((times[times.length - 1] as number) - (times[0] as number)) / (times.length - 1);
+  const step = usualStep(times);
   if (step >= SMOOTH_BELOW) return { times, values };
   const m = Math.round(HALF_WINDOW / step);
   const norm = (2 * m - 1) * (2 * m + 1) * (2 * m + 3);
   const out = Float64Array.from(values);
   for (let i = m; i < values.length - m; i++) {
-    // A gap inside the window would shift the samples: there the record stays as it is.
-    if ((times[i + m] as number) - (times[i - m] as number) > 2.5 * m * step) continue;
+    // The weights stand for samples at one step: where they are not, the record stays as it is.
+    const [before, at, after] = [
+      times[i - m] as number,
+      times[i] as number,
+      times[i + m] as number,
+    ];
+    if (
+      Math.abs(at - before - m * step) > UNEVEN * step ||
+      Math.abs(after - at - m * step) > UNEVEN * step
+    )
+      continue;
     let sum = 0;
     for (let k = -m; k <= m; k++) {
       sum += ((3 * (3 * m * m + 3 * m - 1 - 5 * k * k)) / norm) * (values[i + k] as number);
@@ -124,21 +143,35 @@ function turnsOf(run: Run): Extreme[] {
   return out;
 }
 
-/** Turns that the record leaves again by the smallest range: of those between, the most extreme of their kind. */
-function lasting(turns: readonly Extreme[], smallestRange: number): Extreme[] {
+/**
+ * Turns that the record leaves on both sides by the smallest range: of those between, the most extreme of their kind. The
+ * ends of the run stand beside the first and the last turn as what the record came from and goes to.
+ */
+function lasting(
+  turns: readonly Extreme[],
+  { times, values }: Run,
+  smallestRange: number,
+): Extreme[] {
+  const [first, last] = [turns[0], turns[turns.length - 1]];
+  if (!first || !last) return [];
+  const beside = ({ kind }: Extreme, at: number): Extreme => ({
+    kind: kind === 'high' ? 'low' : 'high',
+    time: times[at] as number,
+    height: values[at] as number,
+  });
+  const start = beside(first, 0);
   const out: Extreme[] = [];
-  let held = turns[0];
-  for (const turn of turns) {
-    if (!held || turn === held) continue;
+  let held = start;
+  for (const turn of [...turns, beside(last, values.length - 1)]) {
     const sign = held.kind === 'high' ? 1 : -1;
     if (turn.kind === held.kind) {
       if ((turn.height - held.height) * sign > 0) held = turn;
     } else if ((held.height - turn.height) * sign >= smallestRange) {
-      out.push(held);
+      if (held !== start) out.push(held);
       held = turn;
     }
   }
-  return held ? [...out, held] : out;
+  return out;
 }
 
 /** Takes neighbours too near in time away, smallest range first. */
@@ -172,7 +205,8 @@ export function extremesOf(
   smallestRange: number,
   shortest: number,
 ): { kept: Extreme[]; dropped: number } {
-  const turns = turnsOf(smooth(run));
-  const kept = apart(lasting(turns, smallestRange), shortest);
+  const smoothed = smooth(run);
+  const turns = turnsOf(smoothed);
+  const kept = apart(lasting(turns, smoothed, smallestRange), shortest);
   return { kept, dropped: turns.length - kept.length };
 }

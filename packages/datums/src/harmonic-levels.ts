@@ -7,6 +7,7 @@
  */
 import { constituent } from '@staithe/constituents';
 import { angleDifference, type HarmonicConstants } from '@staithe/core';
+import { makePlan } from '@staithe/predict';
 import type { AbsentLevel, HarmonicLevels, TideClass } from './types.js';
 
 /** Form number above which springs and neaps of M2 and S2 say nothing about the tide. */
@@ -33,12 +34,13 @@ function age(constants: HarmonicConstants, a: string, b: string): number | undef
  *
  * @param constants - A constants document.
  * @returns Metres above its datum; what a place does not have is in `absent` with the reason.
- * @throws InputError of `constituent`.
+ * @throws InputError of `makePlan`.
  * @example
  * harmonicLevels(constants).tideClass; // 'semidiurnal'
  * @public
  */
 export function harmonicLevels(constants: HarmonicConstants): HarmonicLevels {
+  makePlan(constants); // refuses what cannot be predicted: names, numbers, unit, version
   const amplitude = (name: string): number | undefined => {
     const found = constants.constituents.find((c) => c.name === name)?.amplitude;
     return found === 0 ? undefined : found;
@@ -48,7 +50,7 @@ export function harmonicLevels(constants: HarmonicConstants): HarmonicLevels {
   const absent: AbsentLevel[] = [];
   const semidiurnal = (m2 ?? 0) + (s2 ?? 0);
   const diurnal = (k1 ?? 0) + (o1 ?? 0);
-  const form = semidiurnal > 0 ? diurnal / semidiurnal : undefined;
+  const form = semidiurnal > 0 && diurnal > 0 ? diurnal / semidiurnal : undefined;
   const missing = (names: readonly (readonly [string, number | undefined])[]): string[] =>
     names.filter(([, value]) => value === undefined).map(([name]) => name);
   const refuse = (levels: readonly string[], reason: string): void => {
@@ -91,12 +93,13 @@ export function harmonicLevels(constants: HarmonicConstants): HarmonicLevels {
     ['O1', o1],
   ]);
   const declination = (m2 ?? 0) + diurnal;
-  const isDiurnal = form === undefined || form > MIXED;
+  const isDiurnal = semidiurnal === 0 || (form !== undefined && form > MIXED);
   if (!isDiurnal) {
-    refuse(
-      ['MHHW', 'MLLW'],
-      `form number ${form.toFixed(2)} is not over ${MIXED}: they need a tabulation`,
-    );
+    const why =
+      form === undefined
+        ? 'the constants hold no diurnal tide'
+        : `form number ${form.toFixed(2)} is not over ${MIXED}`;
+    refuse(['MHHW', 'MLLW'], `${why}: they need a tabulation`);
   } else if (three.length > 0)
     refuse(['MHHW', 'MLLW'], `the constants hold no ${three.join(' and no ')}`);
   const [phase, parallax, diurnalAge] = [
@@ -113,7 +116,12 @@ export function harmonicLevels(constants: HarmonicConstants): HarmonicLevels {
       ...(four.length === 0 ? { ISLW: level - (semidiurnal + diurnal) } : {}),
     },
     absent,
-    ...(form === undefined ? {} : { formFactor: form, tideClass: classOf(form) }),
+    ...(form === undefined ? {} : { formFactor: form }),
+    ...(form === undefined && semidiurnal > 0
+      ? {}
+      : diurnal > 0
+        ? { tideClass: classOf(form ?? Infinity) }
+        : {}),
     ranges,
     ages: {
       ...(phase === undefined ? {} : { phase }),

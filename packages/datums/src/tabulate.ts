@@ -20,6 +20,7 @@ import {
 } from '@staithe/core';
 import { atan2, cos, sin } from '@staithe/core/trig';
 import { type Extreme, extremesOf, runsOf } from './extremes.js';
+import { blockError } from './means.js';
 import type { DatumWarning, TabulatedTide, TabulatedTides } from './types.js';
 
 /** Limits of a tabulation. @public */
@@ -44,7 +45,7 @@ function dayStart(tides: readonly Extreme[]): number {
   let s = 0;
   let c = 0;
   for (const { time } of tides) {
-    const angle = degreesToRadians((2 * lunisolarLongitudes(time).tau) % 720);
+    const angle = degreesToRadians(2 * lunisolarLongitudes(time).tau);
     s += sin(angle);
     c += cos(angle);
   }
@@ -179,6 +180,7 @@ export function tabulateTide(series: Series, options: TabulateOptions = {}): Tab
   return {
     tides,
     meanSeaLevel: sum / samples,
+    meanSeaLevelSigma: blockError(times, values),
     samples,
     from: (runs[0] as { times: Float64Array }).times[0] as number,
     to: (runs[runs.length - 1] as { times: Float64Array }).times.slice(-1)[0] as number,

@@ -1,12 +1,12 @@
 /**
  * Tidal datums from tabulated tides: MHHW, MHW, DTL, MTL, MSL, MLW, MLLW.
  *
- * Definitions as published by NOAA CO-OPS (test-vectors/from-memory/datum-methods). Sigma is the standard error of the
- * mean of calendar months, which carries the correlation of the weather within a month; below three months that of
- * single tides.
+ * Definitions as published by NOAA CO-OPS (its glossary of tidal datums, copies seen). Sigma is the standard error of the
+ * mean of calendar months, which carries the correlation of the weather within a month; below three months that of days.
  * @module
  */
-import { ComputationError, type Instant } from '@staithe/core';
+import { ComputationError } from '@staithe/core';
+import { blockError, mean, monthOf } from './means.js';
 import type {
   DatumLevel,
   DatumWarning,
@@ -17,22 +17,6 @@ import type {
 
 const EPOCH_MONTHS = 228; // 19 years
 const FEW = 20;
-
-function monthOf(t: Instant): number {
-  const date = new Date(t);
-  return date.getUTCFullYear() * 12 + date.getUTCMonth();
-}
-
-function mean(values: readonly number[]): number {
-  return values.reduce((sum, value) => sum + value, 0) / values.length;
-}
-
-function standardError(values: readonly number[]): number {
-  if (values.length < 2) return Infinity;
-  const centre = mean(values);
-  const squares = values.reduce((sum, value) => sum + (value - centre) * (value - centre), 0);
-  return Math.sqrt(squares / (values.length - 1) / values.length);
-}
 
 function levelOf(tides: readonly TabulatedTide[], name: string): DatumLevel {
   if (tides.length < 2) {
@@ -45,15 +29,9 @@ function levelOf(tides: readonly TabulatedTide[], name: string): DatumLevel {
       },
     );
   }
-  const months = new Map<number, number[]>();
-  for (const { time, height } of tides) {
-    const list = months.get(monthOf(time));
-    if (list) list.push(height);
-    else months.set(monthOf(time), [height]);
-  }
   const heights = tides.map(({ height }) => height);
-  const blocks = months.size >= 3 ? [...months.values()].map(mean) : heights;
-  return { height: mean(heights), sigma: standardError(blocks), count: tides.length };
+  const times = tides.map(({ time }) => time);
+  return { height: mean(heights), sigma: blockError(times, heights), count: tides.length };
 }
 
 function middle(a: DatumLevel, b: DatumLevel): DatumLevel {
@@ -77,7 +55,8 @@ function middle(a: DatumLevel, b: DatumLevel): DatumLevel {
  * @public
  */
 export function tidalDatums(tabulated: TabulatedTides): TidalDatums {
-  const { tides } = tabulated;
+  // One set of days for all levels: a tide in a day that holds a gap is left out.
+  const tides = tabulated.tides.filter((tide) => tide.class !== 'unclassed');
   const of = (kind: 'high' | 'low'): TabulatedTide[] => tides.filter((tide) => tide.kind === kind);
   const best = (kind: 'high' | 'low', name: 'higher' | 'lower'): TabulatedTide[] =>
     of(kind).filter((tide) => tide.class === name || tide.class === 'only');
@@ -85,7 +64,8 @@ export function tidalDatums(tabulated: TabulatedTides): TidalDatums {
   const MLW = levelOf(of('low'), 'MLW');
   const MHHW = levelOf(best('high', 'higher'), 'MHHW');
   const MLLW = levelOf(best('low', 'lower'), 'MLLW');
-  const months = monthOf(tabulated.to) - monthOf(tabulated.from) + 1;
+  // Months that hold tides: a long gap makes no epoch.
+  const months = new Set(tides.map(({ time }) => monthOf(time))).size;
   const MTL = middle(MHW, MLW);
   const warnings: DatumWarning[] = [...tabulated.warnings];
   if (months < EPOCH_MONTHS) {
@@ -102,7 +82,11 @@ export function tidalDatums(tabulated: TabulatedTides): TidalDatums {
       MHW,
       DTL: middle(MHHW, MLLW),
       MTL,
-      MSL: { height: tabulated.meanSeaLevel, sigma: MTL.sigma, count: tabulated.samples },
+      MSL: {
+        height: tabulated.meanSeaLevel,
+        sigma: tabulated.meanSeaLevelSigma,
+        count: tabulated.samples,
+      },
       MLW,
       MLLW,
     },

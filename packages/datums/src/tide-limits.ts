@@ -78,6 +78,11 @@ export function astronomicalTideLimits(
     })),
     from,
     to,
+    meanLevel: {
+      height: constants.meanLevel,
+      datum: constants.datum,
+      epoch: constants.record && { from: constants.record.from, to: constants.record.to },
+    },
     warnings,
   };
 }

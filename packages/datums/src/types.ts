@@ -59,6 +59,12 @@ export interface TideLimits {
   }[];
   readonly from: Instant;
   readonly to: Instant;
+  /** What the heights refer to: the document's mean level, and the record that it is the mean of where it is known. */
+  readonly meanLevel: {
+    readonly height: Metres;
+    readonly datum?: string | undefined;
+    readonly epoch?: { readonly from: string; readonly to: string } | undefined;
+  };
   /** Constituents of the year that are missing: HAT and LAT are too small without them. */
   readonly warnings: readonly DatumWarning[];
 }
@@ -85,10 +91,12 @@ export interface TabulatedTides {
   readonly tides: readonly TabulatedTide[];
   /** Mean of the samples, metres. */
   readonly meanSeaLevel: Metres;
+  /** Its standard error, from monthly means (daily ones below three months). */
+  readonly meanSeaLevelSigma: Metres;
   readonly samples: number;
   readonly from: Instant;
   readonly to: Instant;
-  /** Turning points dropped because they were too small or too near, and tides left out for gaps. */
+  /** Turning points dropped because they were too small or too near, and gaps of more than three hours, where the record was cut. */
   readonly dropped: { readonly small: number; readonly gaps: number };
   readonly warnings: readonly DatumWarning[];
 }

@@ -64,7 +64,8 @@ export function candidatesFor(nodalModel: NodalModel): { expected: Expected[]; l
 
 /** Days that tell two speeds apart by a full turn; the mean level has speed 0. */
 export function separationDays(a: number, b: number): number {
-  return 360 / Math.abs(a - b) / 24;
+  const apart = Math.abs(a - b);
+  return apart < 1e-9 ? Infinity : 360 / apart / 24;
 }
 
 /** Takes the candidates that stand apart from all larger ones, and says why the others are left. */
@@ -100,6 +101,15 @@ export function takeResolvable(
         decision: 'taken',
         reason: `${(days / needed).toFixed(2)} turns apart from ${rival.name}`,
         separationDays: needed,
+      });
+      continue;
+    }
+    if (needed === Infinity) {
+      candidates.push({
+        name,
+        decision: 'left',
+        reason: `same speed as ${rival.name}`,
+        beside: rival.name,
       });
       continue;
     }

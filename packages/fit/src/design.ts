@@ -5,12 +5,10 @@
  * A child with H = ρ·H(parent) and G = G(parent) + Δ adds ρ·e^{−iΔ}·z(child) to z(parent).
  * @module
  */
-import { type Basis, columnsInto, TILE, type Tile, tiles } from '@staithe/basis';
-import { degreesToRadians, type Instant, wrapDegrees } from '@staithe/core';
+import { type Basis } from '@staithe/basis';
+import { columnsInto, TILE, type Tile, tiles } from '@staithe/basis/kernels';
+import { degreesToRadians, type Instant, wrapDegrees, YEAR } from '@staithe/core';
 import { cos, sin } from '@staithe/core/trig';
-
-/** Milliseconds in a year of 365.25 days, the year of secular rates. */
-const YEAR = 31557600000;
 
 /** A borrowed constituent by its place in the basis. */
 export interface Fold {
@@ -70,11 +68,11 @@ function foldInto(columns: Float64Array, { folds }: Design, n: number): void {
 }
 
 function headInto(columns: Float64Array, design: Design, tile: Tile): void {
-  const { rateFrom, steps, basis } = design;
+  const { rateFrom, steps } = design;
   const { n, offsets, stretch } = tile;
   let at = 0;
   columns.fill(1, 0, n);
-  const start = stretch.from - basis.delay;
+  const start = stretch.from; // a mean counts at its middle
   if (rateFrom !== undefined) {
     at += TILE;
     for (let i = 0; i < n; i++)

@@ -11,7 +11,8 @@ import {
 } from '@staithe/core';
 import { atan2 } from '@staithe/core/trig';
 import { type Design, headCount } from './design.js';
-import { pairErrors } from './errors-of.js';
+import { disc95, pairErrors } from './errors-of.js';
+import type { LineNoise } from './noise.js';
 import type { FitRecord } from './record.js';
 import type { FitOptions } from './types.js';
 
@@ -20,6 +21,7 @@ function constantsOf(
   design: Design,
   solution: Float64Array,
   covariance: Float64Array,
+  noise: readonly LineNoise[],
 ): HarmonicConstant[] {
   const count = design.order.length;
   const head = headCount(design);
@@ -36,6 +38,7 @@ function constantsOf(
       read(0, 0),
       read(0, 1),
       read(1, 1),
+      disc95((noise[1 + j] as LineNoise).bins),
     );
     const amplitude = Math.sqrt(a * a + b * b);
     fitted.push({
@@ -75,6 +78,7 @@ export function documentOf(
   options: FitOptions,
   solution: Float64Array,
   covariance: Float64Array,
+  noise: readonly LineNoise[],
 ): HarmonicConstants {
   const { place, datum, source, nodalHold } = options;
   const nodalModel = options.nodalModel ?? 'potential';
@@ -108,7 +112,7 @@ export function documentOf(
     ...(nodalModel === 'potential' && place?.latitude !== undefined
       ? { nodalLatitude: place.latitude }
       : {}),
-    constituents: constantsOf(design, solution, covariance),
+    constituents: constantsOf(design, solution, covariance, noise),
     uncertainty: { order: design.order, covariance: packed },
     ...(source === undefined ? {} : { source }),
     record: {

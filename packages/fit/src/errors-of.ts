@@ -47,8 +47,29 @@ export function covarianceOf(
   return inverse.map((value, at) => value * sigma(Math.floor(at / count)) * sigma(at % count));
 }
 
-/** Half axes of the 95 % region of two jointly normal numbers: √5.991 of the standard deviation. */
-const DISC_95 = 2.447746830680816;
+/** The b-th root of 20, by Newton's method: exactly specified operations alone. */
+function rootOf20(b: number): number {
+  // 1 + 3/b lies below the root, so the first step leads above it, and all others fall.
+  let root = 1 + 3 / b;
+  for (let i = 0; i < 60; i++) {
+    let power = 1;
+    for (let k = 1; k < b; k++) power *= root;
+    const next = root - (root - 20 / power) / b;
+    if (i > 0 && !(next < root)) break;
+    root = next;
+  }
+  return root;
+}
+
+/**
+ * Squared half axis of the 95 % region of two jointly normal numbers, over their variance: χ² for a variance that is
+ * known, 5.991; 2·F(2, 2b) = 2b·(20^{1/b} − 1) for one that is the mean of b bins, each exponentially distributed.
+ *
+ * @param bins - b; 0: known.
+ */
+export function disc95(bins: number): number {
+  return bins > 0 ? 2 * bins * (rootOf20(bins) - 1) : 5.991464547107979;
+}
 
 /** Amplitude, phase lag and their errors from a pair of coefficients. */
 export interface PairErrors {
@@ -65,6 +86,7 @@ export interface PairErrors {
  * @param caa - Variance of a.
  * @param cab - Covariance.
  * @param cbb - Variance of b.
+ * @param disc - Of {@link disc95}.
  */
 export function pairErrors(
   a: number,
@@ -72,11 +94,12 @@ export function pairErrors(
   caa: number,
   cab: number,
   cbb: number,
+  disc: number,
 ): PairErrors {
   const h2 = a * a + b * b;
   const mean = (caa + cbb) / 2;
   const half = (caa - cbb) / 2;
-  const radius95 = DISC_95 * Math.sqrt(mean + Math.sqrt(half * half + cab * cab));
+  const radius95 = Math.sqrt(disc * (mean + Math.sqrt(half * half + cab * cab)));
   if (h2 === 0)
     return { amplitudeSigma: Math.sqrt(mean), phaseSigma: Math.PI / Math.sqrt(3), radius95 };
   const along = (a * a * caa + 2 * a * b * cab + b * b * cbb) / h2;

@@ -18,17 +18,15 @@ import { type Design, makeDesign } from './design.js';
 import { documentOf, middleOf } from './document.js';
 import { covarianceOf, noiseOf } from './errors-of.js';
 import type { LineNoise } from './noise.js';
-import { normalEquations, residualsOf } from './normal.js';
-import { type Borrowed, readBorrowings, readChoice, readSteps } from './read-options.js';
+import { residualsOf } from './normal.js';
+import { type Borrowed, checkKeys, readBorrowings, readChoice, readSteps } from './read-options.js';
 import { type FitRecord, readRecord } from './record.js';
-import { type Selection, select } from './select.js';
-import { cholesky, inverseGram, type Scaled, scaleGram, solveScaled, spectrumOf } from './solve.js';
+import { select } from './select.js';
+import { solvable } from './solvable.js';
+import { cholesky, inverseGram, solveScaled } from './solve.js';
 import type { Candidate, FitOptions, HarmonicFit } from './types.js';
 import { warningsOf } from './warnings.js';
 
-// Smallest over largest eigenvalue of the scaled Gram matrix: below, the columns cannot be told apart.
-const REFUSED = 1e-10;
-const DROPPED = 1e-4; // where the choice is ours, a poorer one is not made
 const REFINEMENTS = 2;
 
 /** Whether the choice of constituents is ours. */
@@ -72,90 +70,27 @@ function designOf(
   );
 }
 
-/** The two names that weigh most in the weakest direction of the design. */
-function weakestPair(order: readonly string[], weakest: readonly number[]): string[] {
-  const weights = new Map<string, number>();
-  order.forEach((column, i) => {
-    const name = column.replace(/\.(cos|sin)$/, '');
-    weights.set(name, (weights.get(name) ?? 0) + (weakest[i] as number) * (weakest[i] as number));
-  });
-  return [...weights]
-    .sort((a, b) => b[1] - a[1])
-    .slice(0, 2)
-    .map(([name]) => name);
-}
-
-interface Solvable {
-  readonly design: Design;
-  readonly selection: Selection;
-  readonly normal: Float64Array;
-  readonly scaled: Scaled;
-  readonly condition: number;
-}
-
-/** Normal equations that can be solved: the caller's list or a refusal, or our own choice thinned until it is sound. */
-function* solvable(
-  record: FitRecord,
-  options: FitOptions,
-  borrowed: readonly Borrowed[],
-): Generator<Progress, Solvable, void> {
-  let selection = select(options, record, borrowed);
-  for (;;) {
-    const design = designOf(selection.taken, borrowed, record, options);
-    const count = design.order.length;
-    if (record.samples <= count || (ours(options) && selection.taken.length === 0)) {
-      const wanted =
-        ours(options) && selection.taken.length === 0
-          ? 'a record that holds one turn of a constituent'
-          : `more than ${count} samples for ${count} unknowns`;
-      throw new ComputationError(
-        'TOO_FEW_SAMPLES',
-        `expected ${wanted}, got ${record.samples} samples over ${record.days.toFixed(3)} days`,
-        {
-          samples: record.samples,
-          unknowns: count,
-          days: record.days,
-          candidates: selection.candidates,
-        },
-      );
-    }
-    const normal = yield* normalEquations(design, record);
-    const scaled = scaleGram(normal, count, count + 1);
-    const { values, weakest } = spectrumOf(scaled);
-    const ratio = (values[0] as number) / (values[count - 1] as number);
-    const pair = weakestPair(design.order, weakest);
-    // The list is in order of expected size: the smaller of the two goes.
-    const name = selection.taken.filter((of) => pair.includes(of.name)).pop()?.name;
-    if (ours(options) && ratio < DROPPED && name !== undefined) {
-      const beside = pair.find((one) => one !== name) as string;
-      const reason = `cannot be told from ${beside} with these gaps and this sampling`;
-      const left: Candidate = { name, decision: 'left', reason, beside };
-      selection = {
-        taken: selection.taken.filter((of) => of.name !== name),
-        candidates: [...selection.candidates.filter((c) => c.name !== name), left],
-      };
-      continue;
-    }
-    if (!(ratio >= REFUSED)) {
-      throw new ComputationError(
-        'RANK_DEFICIENT',
-        `expected columns that can be told apart, got ${pair.join(' and ')} alike in this record`,
-        { pair, ratio, unknowns: count },
-      );
-    }
-    return { design, selection, normal, scaled, condition: Math.sqrt(1 / ratio) };
-  }
+/** Independent samples that the mean is worth; all of them where there is no noise at all. */
+function effectiveSamples(samples: number, squares: number, density: number): number {
+  return density > 0 ? Math.min(samples, squares / density) : samples;
 }
 
 function* fitSteps(series: Series, options: FitOptions): Generator<Progress, HarmonicFit, void> {
+  checkKeys(options);
   const errorModel = readChoice(options.errorModel, 'options.errorModel', [
     'residual-spectrum',
     'independent',
   ]);
   const record = readRecord(series);
   const borrowed = readBorrowings(options.borrow);
-  const ready = yield* solvable(record, options, borrowed);
-  const { design, selection, normal, scaled, condition } = ready;
+  const chosen = select(options, record, borrowed);
+  const { design, selection, scaled, rhs, condition } = yield* solvable(
+    record,
+    chosen,
+    borrowed,
+    ours(options),
+    (taken) => designOf(taken, borrowed, record, options),
+  );
   const count = design.order.length;
   const factor = cholesky(scaled);
   if (!factor) {
@@ -165,11 +100,7 @@ function* fitSteps(series: Series, options: FitOptions): Generator<Progress, Har
       { condition },
     );
   }
-  const solution = solveScaled(
-    factor,
-    scaled,
-    normal.slice(count * (count + 1), count * (count + 1) + count),
-  );
+  const solution = solveScaled(factor, scaled, rhs);
   let last = yield* residualsOf(design, record, solution);
   for (let i = 0; i < REFINEMENTS; i++) {
     const correction = solveScaled(factor, scaled, last.projection);
@@ -190,7 +121,7 @@ function* fitSteps(series: Series, options: FitOptions): Generator<Progress, Har
   const covariance = covarianceOf(design, inverseGram(factor, scaled), noise);
   const names = ['meanLevel', ...design.basis.names];
   return {
-    constants: documentOf(design, record, options, solution, covariance),
+    constants: documentOf(design, record, options, solution, covariance, noise),
     covariance: { order: design.order, matrix: covariance },
     residuals: { ...record.series, values: last.residuals },
     diagnostics: {
@@ -223,9 +154,16 @@ function* fitSteps(series: Series, options: FitOptions): Generator<Progress, Har
         sigma: Math.sqrt(density),
         bins,
       })),
-      effectiveSamples: Math.min(record.samples, sum / (noise[0] as LineNoise).density),
+      effectiveSamples: effectiveSamples(record.samples, sum, (noise[0] as LineNoise).density),
     },
-    warnings: warningsOf(record, design, condition, noise, ours(options) ? [] : selection.taken),
+    warnings: warningsOf(
+      record,
+      design,
+      condition,
+      noise,
+      ours(options) ? [] : selection.taken,
+      errorModel === 'residual-spectrum',
+    ),
   };
 }
 

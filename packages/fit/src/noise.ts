@@ -3,47 +3,48 @@
  *
  * A line's coefficients feel the noise at its own frequency alone. The spectrum of the sea is red and has cusps round
  * strong lines (W. Munk, B. Zetler and G. Groves 1965), so the density is taken from the band 0.02 to 0.3°/h away,
- * leaving out the bins within 1/T of any fitted line, which the fit emptied; widened only where bins are too few.
- * I(ω) = |Σ r·e^{−iωt}|²/n has the variance of white noise as its mean.
+ * widened only where bins are too few. I(ω) = |Σ r·e^{−iωt}|²/n has the variance of white noise as its mean, less the
+ * share h that the fit took out: E I = s²(1 − h), h nearly the spectral window of the samples at the distance of each
+ * fitted line. Bins of which the fit left less than 30 % are no evidence (docs/fitting.md).
  * @module
  */
-import { degreesToRadians, HOUR } from '@staithe/core';
+import { degreesToRadians, HOUR, wrapDegrees } from '@staithe/core';
 import { sinCosInto } from '@staithe/core/trig';
+import { runsOf, type SampleRun, windowAt } from './window.js';
 
 const NEAREST = 0.02; // degrees per hour
-const BANDS = [0.3, 1, 3];
+const BANDS = [0.3, 1, 3, 8];
 const ENOUGH = 8;
 const MOST = 32;
 const RESTART = 1024;
+const LEFT = 0.3; // share of the noise that the fit must have left in a bin
+const REACH = 1.5; // degrees per hour, beyond which the window of a line is not counted
 
-/** Residual without gaps: times from the middle of the record in hours, and values. */
+/** Residual with gaps as zeros or taken out: times from the middle of the record in hours, and values. */
 export interface Residual {
   readonly hours: Float64Array;
   readonly values: Float64Array;
   /** Hours between the times where they are uniform and whole, else 0. */
   readonly step: number;
-  /** Record length in hours. */
-  readonly span: number;
+  /** Hours that the samples cover, gaps apart: bins a turn of this apart are independent. */
+  readonly covered: number;
+  readonly runs: readonly SampleRun[];
+  readonly samples: number;
 }
 
 /** |Σ r·e^{−iωt}|²/n at a speed in degrees per hour. */
-function periodogramAt(
-  { hours, values, step }: Residual,
-  speed: number,
-  pair: Float64Array,
-): number {
-  const n = values.length;
-  const rate = degreesToRadians(speed);
+function periodogramAt(residual: Residual, speed: number, pair: Float64Array): number {
+  const { hours, values, step, samples } = residual;
   let re = 0;
   let im = 0;
   let s = 0;
   let c = 1;
-  sinCosInto(rate * step, pair);
+  sinCosInto(degreesToRadians(wrapDegrees(speed * step)), pair);
   const turnSin = pair[0] as number;
   const turnCos = pair[1] as number;
-  for (let i = 0; i < n; i++) {
+  for (let i = 0; i < values.length; i++) {
     if (step === 0 || i % RESTART === 0) {
-      sinCosInto(rate * (hours[i] as number), pair);
+      sinCosInto(degreesToRadians(wrapDegrees(speed * (hours[i] as number))), pair);
       s = pair[0] as number;
       c = pair[1] as number;
     }
@@ -54,31 +55,37 @@ function periodogramAt(
     s = c * turnSin + s * turnCos;
     c = turned;
   }
-  return (re * re + im * im) / n;
+  return (re * re + im * im) / samples;
 }
 
-/** Speeds of the bins beside a line that the fit left alone, spread over the band. */
-function binsBeside(
-  line: number,
-  band: number,
-  width: number,
-  emptied: readonly number[],
-): number[] {
-  const out: number[] = [];
+/** Speeds beside a line, a turn of the covered time apart, on both sides while they are above 0. */
+function binsBeside(line: number, band: number, width: number): number[] {
+  const offsets: number[] = [];
   const nearest = Math.max(NEAREST, width);
   for (let offset = nearest; offset <= Math.max(band, 6 * width); offset += width) {
-    for (const speed of [line - offset, line + offset]) {
-      if (speed >= width && emptied.every((other) => Math.abs(other - speed) >= width))
-        out.push(speed);
-    }
+    offsets.push(offset);
   }
-  if (out.length <= MOST) return out;
-  return Array.from({ length: MOST }, (_, i) => out[Math.floor((i * out.length) / MOST)] as number);
+  // Thinned by offset, so that both sides of the line stay: the spectrum is not level.
+  const every = Math.max(1, Math.ceil((2 * offsets.length) / MOST));
+  return offsets
+    .filter((_, i) => i % every === 0)
+    .flatMap((offset) => [line - offset, line + offset])
+    .filter((speed) => speed >= width);
+}
+
+/** The share of the noise at a speed that the fit of the lines left in the residual. */
+function shareLeft({ runs, samples }: Residual, speed: number, lines: readonly number[]): number {
+  let taken = 0;
+  for (const line of lines) {
+    const apart = Math.abs(speed - line);
+    if (apart < REACH) taken += windowAt(runs, samples, apart);
+  }
+  return 1 - taken;
 }
 
 /** The noise that a line feels. */
 export interface LineNoise {
-  /** Mean of the periodogram over the bins, m². */
+  /** Variance of white noise of the same density, m². */
   readonly density: number;
   readonly bins: number;
 }
@@ -86,49 +93,63 @@ export interface LineNoise {
 /**
  * @param residual - Of the fit.
  * @param line - Speed of the line, degrees per hour; 0 for the mean level.
- * @param emptied - Speeds of all fitted and borrowed lines.
+ * @param lines - Speeds of all fitted and borrowed lines, 0 among them.
+ * @returns No bins where the fit left no evidence near the line.
  */
-export function noiseBeside(
-  residual: Residual,
-  line: number,
-  emptied: readonly number[],
-): LineNoise {
-  const width = 360 / residual.span;
+export function noiseBeside(residual: Residual, line: number, lines: readonly number[]): LineNoise {
+  const width = 360 / residual.covered;
   const pair = new Float64Array(2);
-  let bins: number[] = [];
+  let found: { speed: number; left: number }[] = [];
   for (const band of BANDS) {
-    bins = binsBeside(line, band, width, emptied);
-    if (bins.length >= ENOUGH) break;
+    found = binsBeside(line, band, width)
+      .map((speed) => ({ speed, left: shareLeft(residual, speed, lines) }))
+      .filter(({ left }) => left >= LEFT);
+    if (found.length >= ENOUGH) break;
   }
-  const total = bins.reduce((sum, speed) => sum + periodogramAt(residual, speed, pair), 0);
-  return {
-    density: bins.length > 0 ? total / bins.length : Number.POSITIVE_INFINITY,
-    bins: bins.length,
-  };
+  let power = 0;
+  let left = 0;
+  for (const bin of found) {
+    power += periodogramAt(residual, bin.speed, pair);
+    left += bin.left;
+  }
+  return { density: left > 0 ? power / left : 0, bins: found.length };
 }
 
-/** Gaps taken out, times counted in hours from the middle. */
+/**
+ * The residual as the periodogram takes it.
+ *
+ * @param times - Instants.
+ * @param step - Milliseconds where they are uniform, else 0.
+ * @param values - NaN is a gap.
+ */
 export function residualOf(times: Float64Array, step: number, values: Float64Array): Residual {
-  const kept: number[] = [];
-  for (let i = 0; i < values.length; i++) if (!Number.isNaN(values[i])) kept.push(i);
+  const kept = Float64Array.from(values.keys()).filter((i) => !Number.isNaN(values[i] as number));
   const first = times[kept[0] as number] as number;
   const last = times[kept[kept.length - 1] as number] as number;
   const middle = (first + last) / 2;
-  const whole = step > 0;
-  if (whole) {
-    // On a uniform grid a gap weighs nothing: 0 keeps the rotation going. n counts what is there.
-    const count = values.length;
+  const samples = kept.length;
+  const runs = runsOf(
+    kept.map((i) => ((times[i] as number) - middle) / HOUR),
+    step / HOUR,
+  );
+  const covered = runs.reduce((sum, run) => sum + run.count * run.step, 0);
+  if (step > 0) {
+    // On a uniform grid a gap weighs nothing: 0 keeps the rotation going.
     return {
-      hours: Float64Array.from({ length: count }, (_, i) => ((times[i] as number) - middle) / HOUR),
-      values: values.map((v) => (Number.isNaN(v) ? 0 : v * Math.sqrt(count / kept.length))),
+      hours: times.map((t) => (t - middle) / HOUR),
+      values: values.map((v) => (Number.isNaN(v) ? 0 : v)),
       step: step / HOUR,
-      span: (last - first + step) / HOUR,
+      covered,
+      runs,
+      samples,
     };
   }
   return {
-    hours: Float64Array.from(kept, (i) => ((times[i] as number) - middle) / HOUR),
-    values: Float64Array.from(kept, (i) => values[i] as number),
+    hours: kept.map((i) => ((times[i] as number) - middle) / HOUR),
+    values: kept.map((i) => values[i] as number),
     step: 0,
-    span: ((last - first) * kept.length) / (kept.length - 1) / HOUR,
+    covered,
+    runs,
+    samples,
   };
 }

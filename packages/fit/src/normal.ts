@@ -2,7 +2,7 @@
  * The passes over the data: normal equations, and residuals with their projection for refinement.
  * @module
  */
-import { rankUpdate, TILE } from '@staithe/basis';
+import { rankUpdate, TILE } from '@staithe/basis/kernels';
 import type { Progress } from '@staithe/core';
 import { columnsBuffer, type Design, designTiles } from './design.js';
 import type { FitRecord } from './record.js';

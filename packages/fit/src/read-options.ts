@@ -3,7 +3,15 @@
  * @module
  */
 import { type Constituent, type ConstituentName, constituent } from '@staithe/constituents';
-import { describe, InputError, type Instant, isStaitheError, toInstant } from '@staithe/core';
+import {
+  describe,
+  formatInstant,
+  InputError,
+  type Instant,
+  isStaitheError,
+  refuse,
+  toInstant,
+} from '@staithe/core';
 import type { Borrowing, FitOptions } from './types.js';
 
 /** A constituent by name, with the caller's path in the error. */
@@ -77,7 +85,7 @@ export function readSteps(steps: FitOptions['steps'], from: Instant, to: Instant
       throw new InputError(
         'OUT_OF_RANGE',
         `options.steps[${i}]`,
-        `expected within the record (${from} to ${to}), got ${at}`,
+        `expected within the record (${formatInstant(from)} to ${formatInstant(to)}), got ${formatInstant(at)}`,
       );
     })
     .sort((a, b) => a - b);
@@ -97,4 +105,15 @@ export function readChoice<T extends string>(
     path,
     `expected ${choices.join(' or ')}, got ${describe(value)}`,
   );
+}
+
+const KNOWN =
+  'constituents borrow secularRate steps errorModel argumentModel nodalModel nodalHold place datum source signal onProgress';
+
+/** Refuses an option that is not known: a misspelt one would change the result in silence. */
+export function checkKeys(options: FitOptions): void {
+  for (const key of Object.keys(options)) {
+    if (!KNOWN.split(' ').includes(key))
+      refuse('UNKNOWN_CHOICE', `options.${key}`, `one of ${KNOWN}`, key);
+  }
 }

@@ -7,6 +7,7 @@ import {
   ComputationError,
   DAY,
   type Instant,
+  refuse,
   type Series,
   seriesTimes,
 } from '@staithe/core';
@@ -24,6 +25,8 @@ export interface FitRecord {
   /** From the first to the last sample, one (median) step included. */
   readonly days: number;
 }
+
+const LARGEST = 1e6; // m: beyond, squares lose what the tide is
 
 function medianStep(times: Float64Array): number {
   const steps = Float64Array.from({ length: Math.max(0, times.length - 1) }, (_, i) => {
@@ -50,6 +53,9 @@ export function readRecord(input: Series): FitRecord {
   for (let i = 0; i < values.length; i++) {
     const value = values[i] as number;
     if (Number.isNaN(value)) continue;
+    if (Math.abs(value) > LARGEST) {
+      refuse('OUT_OF_RANGE', `values[${i}]`, `metres up to ${LARGEST}`, value);
+    }
     if (first < 0) first = i;
     last = i;
     samples++;

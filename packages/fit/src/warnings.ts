@@ -20,6 +20,7 @@ const FEW_BINS = 4;
  * @param condition - Of the design.
  * @param noise - Beside each line.
  * @param asked - The caller's list of constituents; empty where the choice was ours.
+ * @param spectral - Whether the noise was taken from the residual's spectrum.
  */
 export function warningsOf(
   record: FitRecord,
@@ -27,10 +28,11 @@ export function warningsOf(
   condition: number,
   noise: readonly LineNoise[],
   asked: readonly Constituent[],
+  spectral: boolean,
 ): FitWarning[] {
   const { length } = record.values;
   const missing = length - record.samples;
-  const few = noise.filter(({ bins }) => bins > 0 && bins < FEW_BINS).length;
+  const few = spectral ? noise.filter(({ bins }) => bins < FEW_BINS).length : 0;
   const list: (FitWarning | false)[] = [
     record.days < MONTH && {
       code: 'SHORT_RECORD',

@@ -91,13 +91,9 @@ export function sideLines(
   ];
   if (latitude === undefined || own === 3) return { lines: out, leftOut: false };
   const [w2, w3, largest] = weights(numbers[0], latitude);
-  const leftOut = Math.abs(w2) < WEAKEST * largest;
-  if (!leftOut) {
-    // Degree 2 is a sine for the diurnal lines only, degree 3 a cosine for them only.
-    const turn = numbers[0] === 1 ? 90 : -90;
-    for (const line of lines) {
-      if (line.degree === 3 && shares(line, numbers)) out.push(side(line, w3 / w2, turn));
-    }
-  }
-  return { lines: out, leftOut };
+  const degree3 = lines.filter((line) => line.degree === 3 && shares(line, numbers));
+  if (Math.abs(w2) < WEAKEST * largest) return { lines: out, leftOut: degree3.length > 0 };
+  // Degree 2 is a sine for the diurnal lines only, degree 3 a cosine for them only.
+  const turn = numbers[0] === 1 ? 90 : -90;
+  return { lines: [...out, ...degree3.map((line) => side(line, w3 / w2, turn))], leftOut: false };
 }

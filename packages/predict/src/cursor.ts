@@ -2,7 +2,13 @@
  * A cursor over the curve of a plan: height and derivatives at an instant, piece by piece of smooth time.
  * @module
  */
-import { boundsInto, chargeInto, curveInto, makeStretcher, type Stretch } from '@staithe/basis';
+import {
+  boundsInto,
+  chargeInto,
+  curveInto,
+  makeStretcher,
+  type Stretch,
+} from '@staithe/basis/kernels';
 import type { Instant } from '@staithe/core';
 import type { TidePlan } from './plan.js';
 
@@ -49,7 +55,7 @@ export function makeCursor(plan: TidePlan): Cursor {
     readInto(out, { stretch, charged }, t) {
       const length = stretch.to - stretch.from;
       curveInto(out, charged, basis.speeds, length, t + basis.delay - stretch.from, pair);
-      out[0] = (out[0] as number) + levelAt(plan, t);
+      out[0] = (out[0] as number) + levelAt(plan, t + basis.delay);
       out[1] = (out[1] as number) + plan.ratePerMs;
     },
   };

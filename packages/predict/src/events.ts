@@ -2,7 +2,7 @@
  * Turning points, crossings of a level, and windows.
  * @module
  */
-import { describe, InputError, type Instant, type Span, toSpan } from '@staithe/core';
+import { describe, InputError, type Instant, refuse, type Span, toSpan } from '@staithe/core';
 import { heightWithin } from './heights.js';
 import type { TidePlan } from './plan.js';
 import { jumpsIn, walk } from './walk.js';
@@ -85,7 +85,8 @@ export function findCrossings(plan: TidePlan, level: number, span: Span): Crossi
  * @param condition - `above` and `below` in metres above the datum of the constants, at least one of them.
  * @param span - Half-open; windows are cut at its ends and say so.
  * @returns In order of time, from less than to.
- * @throws InputError of `toSpan`; `MISSING`, path `condition`; `NOT_FINITE`, path `level`.
+ * @throws InputError of `toSpan`; `MISSING`, path `condition`; `NOT_FINITE` or `CONFLICT`, path `condition.above`
+ *   or `condition.below`.
  * @example
  * findWindows(makePlan(constants), { below: 99 }, { from: 0, to: DAY })[0]?.openEnd; // true
  * @public
@@ -98,6 +99,15 @@ export function findWindows(
   const { above, below } = condition;
   if (above === undefined && below === undefined) {
     throw new InputError('MISSING', 'condition', 'expected above, below or both, got neither');
+  }
+  for (const [path, level] of [
+    ['condition.above', above],
+    ['condition.below', below],
+  ] as const) {
+    if (level !== undefined && !Number.isFinite(level)) refuse('NOT_FINITE', path, 'metres', level);
+  }
+  if ((above ?? -Infinity) > (below ?? Infinity)) {
+    refuse('CONFLICT', 'condition.above', `metres up to condition.below ${below}`, above);
   }
   const { from, to } = toSpan(span);
   const jumps = new Set(jumpsIn(plan, from, to));

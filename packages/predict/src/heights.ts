@@ -2,7 +2,8 @@
  * Heights and rates of a plan.
  * @module
  */
-import { gridCount, synthesizeInto, type TimeGrid } from '@staithe/basis';
+import { synthesizeInto, type TimeGrid } from '@staithe/basis';
+import { gridCount } from '@staithe/basis/kernels';
 import {
   describe,
   HOUR,
@@ -64,7 +65,7 @@ function heightsInto(out: Float64Array, plan: TidePlan, grid: TimeGrid): void {
   const level = plan.coefficients[0] as number;
   for (let i = 0; i < gridCount(grid); i++) {
     const t = grid.times ? (grid.times[i] as number) : grid.start + i * grid.step;
-    out[i] = (out[i] as number) + levelAt(plan, t) - level;
+    out[i] = (out[i] as number) + levelAt(plan, t + plan.basis.delay) - level;
   }
 }
 

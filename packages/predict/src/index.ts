@@ -11,5 +11,5 @@ export {
   type TurningPoint,
 } from './events.js';
 export { heightAt, heightsAtTimes, heightsOnGrid, rateAt } from './heights.js';
-export { type CurveOptions, type LeftOut, makePlan, type TidePlan, YEAR } from './plan.js';
+export { type CurveOptions, type LeftOut, makePlan, type TidePlan } from './plan.js';
 export { type TideCurve, tideCurve } from './tide-curve.js';

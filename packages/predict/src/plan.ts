@@ -14,9 +14,11 @@ import {
   isStaitheError,
   type NodalHold,
   type NodalModel,
+  refuse,
   type Sampling,
   toInstant,
   wrapDegrees,
+  YEAR,
 } from '@staithe/core';
 import { cos, sin } from '@staithe/core/trig';
 
@@ -56,9 +58,6 @@ export interface TidePlan {
   readonly leftOut: readonly LeftOut[];
 }
 
-/** Milliseconds in a year of 365.25 days, the year of secular rates. @public */
-export const YEAR: number = 31557600000;
-
 function checked(value: number, path: string, low: number, expected: string): number {
   if (Number.isFinite(value) && value >= low) return value;
   const code = Number.isFinite(value) ? 'OUT_OF_RANGE' : 'NOT_FINITE';
@@ -73,6 +72,16 @@ function named(name: string, path: string): Constituent {
     const { code, message, details } = error as InputError;
     throw new InputError(code, path, message.replace(/^constituent: /, ''), details);
   }
+}
+
+/** What a document that was not parsed could get wrong silently. */
+function checkDocument(constants: HarmonicConstants): void {
+  const { format, version, unit, constituents } = (constants ?? {}) as Partial<HarmonicConstants>;
+  if (format !== 'staithe-constants')
+    refuse('UNKNOWN_FORMAT', 'format', 'staithe-constants', format);
+  if (version !== 1) refuse('UNKNOWN_VERSION', 'version', '1', version);
+  if (unit !== 'm') refuse('UNKNOWN_UNIT', 'unit', 'm', unit);
+  if (!Array.isArray(constituents)) refuse('WRONG_TYPE', 'constituents', 'an array', constituents);
 }
 
 function checkModels(constants: HarmonicConstants, models: CurveOptions['models']): void {
@@ -102,9 +111,7 @@ function checkModels(constants: HarmonicConstants, models: CurveOptions['models'
  * @public
  */
 export function makePlan(constants: HarmonicConstants, options: CurveOptions = {}): TidePlan {
-  if (constants.unit !== 'm') {
-    throw new InputError('UNKNOWN_UNIT', 'unit', `expected m, got ${describe(constants.unit)}`);
-  }
+  checkDocument(constants);
   const { models } = options;
   checkModels(constants, models);
   const leftOut: LeftOut[] = [];
@@ -118,7 +125,11 @@ export function makePlan(constants: HarmonicConstants, options: CurveOptions = {
       leftOut.push({ name, reason: 'amplitude 0: not resolved' });
       return;
     }
-    list.push(named(name, `${path}.name`));
+    const of = named(name, `${path}.name`);
+    if (list.some((other) => other.name === of.name)) {
+      refuse('DUPLICATE', `${path}.name`, 'each constituent once', name);
+    }
+    list.push(of);
     const angle = degreesToRadians(wrapDegrees(lag));
     coefficients.push(size * cos(angle), size * sin(angle));
   });

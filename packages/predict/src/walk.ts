@@ -17,11 +17,12 @@ export type Quest = { readonly slope: true } | { readonly slope: false; readonly
 
 /** Instants at which the curve jumps, within [from, to): joins of calendar years and steps of the level. */
 export function jumpsIn(plan: TidePlan, from: Instant, to: Instant): Instant[] {
-  const jumps = plan.steps.map(({ at }) => at);
+  const { delay } = plan.basis;
+  const jumps = plan.steps.map(({ at }) => at - delay);
   if (plan.basis.hold === 'calendar-year') {
-    const last = new Date(to).getUTCFullYear();
-    for (let year = new Date(from).getUTCFullYear(); year <= last; year++) {
-      jumps.push(Date.UTC(year, 0, 1) - plan.basis.delay);
+    const last = new Date(to + delay).getUTCFullYear();
+    for (let year = new Date(from + delay).getUTCFullYear(); year <= last; year++) {
+      jumps.push(Date.UTC(year, 0, 1) - delay);
     }
   }
   return jumps.filter((at) => at >= from && at < to).sort((a, b) => a - b);
@@ -69,7 +70,10 @@ function edges(piece: Piece, plan: TidePlan, from: Instant, to: Instant): number
   const end = Math.min(to, piece.stretch.to - plan.basis.delay);
   const out = [start];
   for (let t = (Math.floor(start / CELL) + 1) * CELL; t < end; t += CELL) out.push(t);
-  for (const { at } of plan.steps) if (at > start && at < end) out.push(at);
+  for (const { at } of plan.steps) {
+    const jump = at - plan.basis.delay;
+    if (jump > start && jump < end) out.push(jump);
+  }
   out.push(end);
   return out.sort((a, b) => a - b).filter((t, i, all) => i === 0 || t > (all[i - 1] as number));
 }
@@ -91,7 +95,7 @@ export function walk(
   found: (t: Instant, before: 1 | -1, height: number) => void,
 ): void {
   const cursor = makeCursor(plan);
-  const steps = new Set(plan.steps.map(({ at }) => at));
+  const steps = new Set(plan.steps.map(({ at }) => at - plan.basis.delay));
   const out = new Float64Array(3);
   const end = Math.ceil((to + 1) / CELL) * CELL;
   let piece = cursor.pieceAt(Math.floor((from - 1) / CELL) * CELL);

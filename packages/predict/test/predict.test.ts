@@ -161,6 +161,30 @@ describe('bad input', () => {
       () => tideCurve(place([{ name: 'M2', amplitude: 1, phaseLag: Number.NaN }])),
     ],
     ['NOT_FINITE meanLevel', () => tideCurve(place([], { meanLevel: Number.NaN }))],
+    [
+      'DUPLICATE constituents[2].name',
+      () =>
+        tideCurve(
+          place([
+            { name: 'Mm', amplitude: 0, phaseLag: 0 },
+            { name: 'M2', amplitude: 1, phaseLag: 0 },
+            { name: 'M2', amplitude: 1, phaseLag: 0 },
+          ]),
+        ),
+    ],
+    ['UNKNOWN_VERSION version', () => tideCurve(place([], { version: 2 as 1 }))],
+    ['UNKNOWN_FORMAT format', () => tideCurve(null as unknown as typeof quay)],
+    ['WRONG_TYPE constituents', () => tideCurve(place({} as unknown as []))],
+    [
+      'UNKNOWN_CHOICE argumentModel',
+      () => tideCurve(place([], { argumentModel: 'x' as 'iers2010' })),
+    ],
+    [
+      'OUT_OF_RANGE sampling.meanOver',
+      () => tideCurve(quay, { sampling: { meanOver: -1, stamp: 'start' } }),
+    ],
+    ['NOT_FINITE condition.above', () => curve.windows({ above: Number.NaN }, span)],
+    ['CONFLICT condition.above', () => curve.windows({ above: 2, below: 1 }, span)],
     ['UNKNOWN_UNIT unit', () => tideCurve(place([], { unit: 'ft' as 'm' }))],
     [
       'NO_TIME_ZONE steps[0].at',

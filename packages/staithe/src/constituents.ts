@@ -12,12 +12,16 @@ export type {
 } from '@staithe/constituents';
 export {
   constituent,
+  constituentsNear,
   equilibriumArgument,
+  formatCompound,
   formatDoodsonNumber,
   formatXdo,
+  groupsResolvableIn,
   listConstituents,
   parseCompound,
   parseDoodsonNumber,
   parseXdo,
   potentialLines,
+  separationTime,
 } from '@staithe/constituents';

@@ -12,7 +12,6 @@ export type {
   TurningPoint,
 } from '@staithe/predict';
 export {
-  YEAR,
   findCrossings,
   findTurningPoints,
   findWindows,

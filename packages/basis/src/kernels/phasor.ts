@@ -1,6 +1,6 @@
 /**
  * One constituent over the samples of a tile: z = Q(x)·e^{iσ·offset}. Cost: a sine-cosine pair a sample at irregular
- * times (about 15 ns), a complex product a sample on a uniform grid, restarted each 128 samples (error below 2e-14).
+ * times, a complex product a sample on a uniform grid, restarted each 128 samples so that rounding does not add up.
  * @module
  */
 import { sinCosInto } from '@staithe/core/trig';
@@ -41,7 +41,7 @@ export function phasorInto(
   const b3 = cubics[at + 7] as number;
   let turnCos = 1;
   let turnSin = 0;
-  if (step > 0) {
+  if (step > 0 && n > 1) {
     sinCosInto(speed * step, pair);
     turnSin = pair[0] as number;
     turnCos = pair[1] as number;

@@ -9,6 +9,7 @@ import { deltaT, lunisolarLongitudesInto } from '@staithe/arguments';
 import type { PotentialLine } from '../../src/index.js';
 import {
   Body,
+  e_tilt,
   GeoMoon,
   HelioVector,
   KM_PER_AU,
@@ -16,14 +17,14 @@ import {
   RotateVector,
   Rotation_EQJ_EQD,
   SiderealTime,
-  type Vector,
+  Vector,
 } from 'astronomy-engine';
 
-/** Earth, Moon and Sun: IERS Conventions (2010), table 1.1. With g = GM/a² no other constant is needed. */
+/** Earth, Moon and Sun: IERS Conventions (2010), table 1.1, from memory. With g = GM/a² no other constant enters. */
 export const CONSTANTS = {
   earthRadius: 6378136.6, // m, equatorial
-  moonOverEarth: 0.0123000371,
-  sunOverEarth: 332946.0487, // 1.32712442099e20 / 3.986004418e14
+  moonOverEarth: 0.0123000371, // masses
+  sunOverEarth: 332946.0487, // GM 1.32712442099e20 over 3.986004418e14 m³/s²
 } as const;
 
 /** The terms, in the order of their numbers: two a term, real and imaginary part. */
@@ -37,7 +38,7 @@ export const TERMS = [
   { degree: 3, order: 3 },
 ] as const;
 
-/** g of the heights, m/s²: GM/a² of the Earth. */
+/** g of the heights of waves, m/s²: GM/a² of the Earth. */
 const GRAVITY = 9.7982869;
 const J2000_MS = 946728000000;
 const NUMBERS = 2 * TERMS.length;
@@ -85,24 +86,39 @@ function addBody(
   });
 }
 
+/** A position on the true equator, and the nutation taken out of it: on the mean equator and equinox of date. */
+function withoutNutation(place: Vector, { dpsi, tobl, mobl }: ReturnType<typeof e_tilt>): Vector {
+  const [ct, st] = [Math.cos(tobl * DEGREE), Math.sin(tobl * DEGREE)];
+  const [cm, sm] = [Math.cos(mobl * DEGREE), Math.sin(mobl * DEGREE)];
+  const [cp, sp] = [Math.cos((dpsi / 3600) * DEGREE), Math.sin((dpsi / 3600) * DEGREE)];
+  const y = place.y * ct + place.z * st;
+  const z = place.z * ct - place.y * st;
+  const x = place.x * cp + y * sp;
+  const turned = y * cp - place.x * sp;
+  return new Vector(x, turned * cm - z * sm, turned * sm + z * cm, place.t);
+}
+
 /**
  * From the ephemeris: geometric positions on the true equator and equinox of date, apparent sidereal time.
  *
  * @param times - Milliseconds since 1970, UTC read as UT1.
+ * @param nutation - False: the mean equator and equinox, mean sidereal time.
  * @returns Metres, row-major, times.length × 14.
  */
-export function tideOfEphemeris(times: Float64Array): Float64Array {
+export function tideOfEphemeris(times: Float64Array, nutation = true): Float64Array {
   const out = new Float64Array(times.length * NUMBERS);
   times.forEach((ms, i) => {
     const time = MakeTime(new Date(ms));
     const rotation = Rotation_EQJ_EQD(time);
-    const sidereal = 15 * SiderealTime(time);
     const earth = HelioVector(Body.Earth, time);
-    earth.x = -earth.x;
-    earth.y = -earth.y;
-    earth.z = -earth.z;
-    const sun = RotateVector(rotation, earth);
-    const moon = RotateVector(rotation, GeoMoon(time));
+    const tilt = e_tilt(time);
+    const [moon, sun] = [GeoMoon(time), new Vector(-earth.x, -earth.y, -earth.z, time)].map(
+      (place) => {
+        const turned = RotateVector(rotation, place);
+        return nutation ? turned : withoutNutation(turned, tilt);
+      },
+    ) as [Vector, Vector];
+    const sidereal = 15 * SiderealTime(time) - (nutation ? 0 : tilt.ee / 240);
     addBody(out, i * NUMBERS, moon, CONSTANTS.moonOverEarth, sidereal);
     addBody(out, i * NUMBERS, sun, CONSTANTS.sunOverEarth, sidereal);
   });

@@ -1,0 +1,57 @@
+/**
+ * A place in the sky, and the turn from ecliptic to equator.
+ *
+ * Source: J. Meeus, Astronomical Algorithms, 2nd ed. (1998), eq. 13.3, 13.4 in rectangular form; obliquity eq. 22.2.
+ * @module
+ */
+import { type Degrees, radiansToDegrees, wrapDegrees } from '@staithe/core';
+import { atan2 } from '@staithe/core/trig';
+import { polynomial, sinCos } from './series.js';
+
+/** An apparent place seen from the centre of the Earth, true equinox of date. @public */
+export interface SkyPosition {
+  /** Ecliptic longitude, degrees in [0, 360). */
+  readonly longitude: Degrees;
+  /** Ecliptic latitude, degrees north. */
+  readonly latitude: Degrees;
+  /** From centre to centre, kilometres. */
+  readonly distance: number;
+  /** Right ascension, degrees in [0, 360). */
+  readonly rightAscension: Degrees;
+  /** Declination, degrees north. */
+  readonly declination: Degrees;
+}
+
+/** Mean obliquity of the ecliptic, from Julian centuries TT. */
+export function meanObliquity(t: number): Degrees {
+  return polynomial([84381.448, -46.815, -0.00059, 0.001813], t) / 3600;
+}
+
+/** Longitude and latitude counted from a plane that is tilted about the origin of longitude. */
+export function turned(
+  longitude: Degrees,
+  latitude: Degrees,
+  tilt: Degrees,
+): readonly [longitude: Degrees, latitude: Degrees] {
+  const [sinLongitude, cosLongitude] = sinCos(longitude);
+  const [sinLatitude, cosLatitude] = sinCos(latitude);
+  const [sinTilt, cosTilt] = sinCos(tilt);
+  const x = cosLatitude * cosLongitude;
+  const y = cosLatitude * sinLongitude * cosTilt - sinLatitude * sinTilt;
+  const z = cosLatitude * sinLongitude * sinTilt + sinLatitude * cosTilt;
+  return [
+    wrapDegrees(radiansToDegrees(atan2(y, x))),
+    radiansToDegrees(atan2(z, Math.sqrt(x * x + y * y))),
+  ];
+}
+
+/** Adds right ascension and declination to ecliptic coordinates. */
+export function placeFrom(
+  longitude: Degrees,
+  latitude: Degrees,
+  distance: number,
+  obliquity: Degrees,
+): SkyPosition {
+  const [rightAscension, declination] = turned(longitude, latitude, obliquity);
+  return { longitude: wrapDegrees(longitude), latitude, distance, rightAscension, declination };
+}
