@@ -66,8 +66,8 @@ export function separationTime(
  * @returns Groups in order of speed; each a list in order of speed.
  * @throws InputError `OUT_OF_RANGE` or `NOT_FINITE`, path `duration`.
  * @example
- * groupsResolvableIn(60 * DAY).find((group) => group.some(({ name }) => name === 'S2'))?.map(({ name }) => name);
- * // ['T2', 'S2', 'R2', 'K2']
+ * const names = groupsResolvableIn(60 * DAY).map((group) => group.map(({ name }) => name).join(' '));
+ * names.includes('T2 S2 R2 K2'); // true
  * @public
  */
 export function groupsResolvableIn(duration: number): readonly (readonly Constituent[])[] {

@@ -250,7 +250,7 @@ describe('tabulateTide', () => {
           const sizes = [2, 0.5, 0.2, 0.2]; // two tides a day, unequal ones
           const constituents = waves.map(([amplitude, phaseLag], i) => ({
             name: names[i] as string,
-            amplitude,
+            amplitude: (i === 0 ? 0.5 + amplitude / 2 : amplitude) * (sizes[i] as number),
             phaseLag,
           }));
           const series = tideCurve({ ...quay, constituents }).heights({

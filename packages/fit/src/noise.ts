@@ -123,7 +123,7 @@ export function noiseBeside(residual: Residual, line: number, lines: readonly nu
  * @param values - NaN is a gap.
  */
 export function residualOf(times: Float64Array, step: number, values: Float64Array): Residual {
-  const kept = Float64Array.from(values.keys()).filter((i) => !Number.isNaN(values[i] as number));
+  const kept = Float64Array.from(values.keys()).filter((i) => !Number.isNaN(values[i]));
   const first = times[kept[0] as number] as number;
   const last = times[kept[kept.length - 1] as number] as number;
   const middle = (first + last) / 2;
