@@ -95,6 +95,35 @@ writeVector({
   })),
 });
 
+const heights = at('02_iers_tests', 'table6_7_Hf.csv');
+writeVector({
+  id: 'iers2010-table-6.7',
+  title: 'IERS Conventions (2010), Table 6.7: astronomical amplitudes Hf of 81 waves',
+  source: `${IERS}, section 6.3.2, Table 6.7; through a transcription kept by an open-source space-dynamics library (Apache-2.0)`,
+  kind: 'published',
+  unit: 'm',
+  licence: IERS_LICENCE,
+  sourceSha256: sha256(heights),
+  tolerance: {
+    abs: 1.3e-5,
+    rel: 6e-4,
+    why: 'printed to 1e-5 m, and of a newer computation than the lines of Cartwright and Edden (1973): M2 0.63192 against 0.63221, 0.46 parts in a thousand; small lines differ by up to 1.3 printed units',
+  },
+  departures: {
+    psi1: '166.554, an annual term: 0.00293 against 0.002885; Hartmann and Wenzel (1995) side with the newer value',
+  },
+  notes: [
+    'Degree 2 but for 155.555, 245.555, 265.555 and their like, which are of degree 3. M4 has none and is left out; 137.445 is printed oddly there and kept.',
+  ],
+  cases: readTable(heights)
+    .filter((row) => row.Hf_m !== '')
+    .map((row) => ({
+      name: row.name,
+      doodsonNumbers: DOODSON_COLUMNS.map((column) => Number(row[column])),
+      height: Number(row.Hf_m),
+    })),
+});
+
 const erfa = at('03_erfa_args', 'fundamental_args_1850_2150.csv');
 writeVector({
   id: 'erfa-fundamental-arguments',

@@ -39,12 +39,13 @@ const columns = places.flatMap((place) =>
 writeVector({
   id: 'ephemeris-equilibrium-tide',
   title: 'Equilibrium tide of degrees 2 and 3 from positions of Moon and Sun, 1993 to 2011',
-  source: `Geometric positions of Moon and Sun on the true equator and equinox of date, and apparent sidereal time, computed with ${LIBRARY}; constants of the IERS Conventions (2010), table 1.1 (from memory)`,
+  source: `Geometric positions of Moon and Sun on the true equator and equinox of date, and apparent sidereal time, computed with ${LIBRARY}; the constants are among the cases`,
   kind: 'reference-library',
   unit: 'm; limits: rms of the difference over rms of the signal, means removed',
   licence: 'MIT (the library); the numbers were computed with it',
   tolerance: { abs: 1e-9, why: 'heights repeat to rounding with the same version of the library' },
   notes: [
+    'The constants are those of the IERS Conventions (2010), table 1.1, from memory; heights are on the scale of the lines within 7e-5.',
     'Height = sum over Moon and Sun of mu a (a/d)^(n+1) P_n(cos z): mu the mass over that of the Earth, a the radius, d the distance, z the zenith distance; g = GM/a^2 cancels.',
     'heights of a sample: degree 2 and degree 3 at the first place, then at the second, and so on. UT is read as UT1, Delta T is that of the library.',
     'The limits are those that the project sets itself; the ones with degree 3 too.',
