@@ -105,9 +105,9 @@ writeVector({
   licence: IERS_LICENCE,
   sourceSha256: sha256(heights),
   tolerance: {
-    abs: 1.3e-5,
+    abs: 1.45e-5,
     rel: 6e-4,
-    why: 'printed to 1e-5 m, and of a newer computation than the lines of Cartwright and Edden (1973): M2 0.63192 against 0.63221, 0.46 parts in a thousand; small lines differ by up to 1.3 printed units',
+    why: 'printed to 1e-5 m, and of a newer computation than the lines of Cartwright and Edden (1973): M2 0.63192 against 0.63221, 0.46 parts in a thousand; small lines differ by up to 1.4 printed units',
   },
   departures: {
     psi1: '166.554, an annual term: 0.00293 against 0.002885; Hartmann and Wenzel (1995) side with the newer value',
