@@ -2,7 +2,7 @@
  * The tide of an ephemeris, 1993 to 2011, fitted one year at a time under each nodal model: how constant the constants are.
  */
 import { loadVector } from '@staithe/test-vectors';
-import { yearlyScatter } from '../../packages/fit/test/reference/yearly-fits.ts';
+import { yearlyScatter } from '../test/reference/yearly-fits.ts';
 import { recordLong } from '../accuracy/long.mjs';
 
 const vector = 'ephemeris-yearly-fits';

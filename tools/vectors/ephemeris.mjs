@@ -11,7 +11,7 @@ import {
   CONSTANTS,
   tideOfEphemeris,
 } from '../../packages/constituents/test/reference/equilibrium-tide.ts';
-import { groupsOf } from '../../packages/fit/test/reference/yearly-fits.ts';
+import { groupsOf } from '../test/reference/yearly-fits.ts';
 import { writeVector } from './write.mjs';
 
 const LIBRARY = 'astronomy-engine 2.1.19 (D. Cross, MIT)';

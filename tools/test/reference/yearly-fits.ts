@@ -15,9 +15,12 @@ import {
   uniformSeries,
 } from '@staithe/core';
 import { nodalPlan } from '@staithe/nodal';
-import { DEGREE_2, heightsAt } from '../../../constituents/test/reference/absolute-proof.js';
-import { tideOfEphemeris } from '../../../constituents/test/reference/equilibrium-tide.js';
-import { fitHarmonics } from '../../src/index.js';
+import {
+  DEGREE_2,
+  heightsAt,
+} from '../../../packages/constituents/test/reference/absolute-proof.js';
+import { tideOfEphemeris } from '../../../packages/constituents/test/reference/equilibrium-tide.js';
+import { fitHarmonics } from '@staithe/fit';
 
 /** The vector `ephemeris-yearly-fits`. */
 export interface YearlyFits {
