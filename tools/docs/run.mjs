@@ -20,4 +20,10 @@ const { status } = spawnSync('typedoc', ['--logLevel', 'Warn', ...entries], {
   stdio: 'inherit',
 });
 if (status !== 0) process.exit(status ?? 1);
+const pages = spawnSync(
+  'tsx',
+  ['--tsconfig', 'tsconfig.test.json', 'tools/docs/constituent-pages.ts', 'docs/api/constituents'],
+  { cwd: root, stdio: 'inherit' },
+);
+if (pages.status !== 0) process.exit(pages.status ?? 1);
 conclude(brokenLinks(), `${folders.length} packages documented in docs/api`);

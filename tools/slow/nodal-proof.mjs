@@ -3,7 +3,10 @@
  */
 import { loadVector } from '@staithe/test-vectors';
 import { yearlyScatter } from '../test/reference/yearly-fits.ts';
+import { writeFileSync } from 'node:fs';
 import { recordLong } from '../accuracy/long.mjs';
+import { swingSvg } from '../docs/drawing.ts';
+import { root } from '../gate/packages.mjs';
 
 const vector = 'ephemeris-yearly-fits';
 const { cases: proof } = loadVector(vector);
@@ -60,3 +63,10 @@ if (!(swing('M2') > 0.035 && swing('O1') > 0.17)) {
     `expected M2 to swing by 3.7 % and O1 by 18 % under none, got ${swing('M2')}, ${swing('O1')}`,
   );
 }
+
+const curves = ['M2', 'O1'].flatMap((name) =>
+  models.map((model) => ({ name, model, shares: row(model, name).shares })),
+);
+const picture = 'docs/pictures/nodal-proof.svg';
+writeFileSync(`${root}/${picture}`, swingSvg(curves, new Date(proof.from).getUTCFullYear()));
+console.log(`wrote ${picture}`);

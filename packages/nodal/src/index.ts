@@ -8,3 +8,9 @@ export { amplitudeBetweenModels, type NodalOptions, nodalCorrection } from './no
 export { type NodalPlan, type NodalRule, nodalPhasorsInto, nodalPlan } from './nodal-plan.js';
 export { type OrbitAngles, orbitAngles } from './schureman1940.js';
 export { type SideLine, sideLines } from './side-lines.js';
+export {
+  type NodalPoint,
+  type YearlySheetOptions,
+  type YearlySheetRow,
+  yearlySheet,
+} from './yearly-sheet.js';

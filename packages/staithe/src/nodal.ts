@@ -6,9 +6,12 @@ export type {
   NodalModel,
   NodalOptions,
   NodalPlan,
+  NodalPoint,
   NodalRule,
   OrbitAngles,
   SideLine,
+  YearlySheetOptions,
+  YearlySheetRow,
 } from '@staithe/nodal';
 export {
   amplitudeBetweenModels,
@@ -17,4 +20,5 @@ export {
   nodalPlan,
   orbitAngles,
   sideLines,
+  yearlySheet,
 } from '@staithe/nodal';

@@ -112,6 +112,8 @@ export interface Scatter {
   readonly name: string;
   /** Mean over the years, metres. */
   readonly amplitude: number;
+  /** Amplitude of each year over the mean. */
+  readonly shares: readonly number[];
   /** Largest departure of a year from the mean, as a share of the mean. */
   readonly amplitudeStrays: number;
   /** Largest departure of a year from the mean, degrees. */
@@ -145,6 +147,7 @@ export function yearlyScatter(
     return {
       name,
       amplitude,
+      shares: rows.map((row) => row.amplitude / amplitude),
       amplitudeStrays: Math.max(...rows.map((row) => Math.abs(row.amplitude / amplitude - 1))),
       phaseLagStrays: Math.max(...lags.map((value) => Math.abs(value - lag))),
     };
