@@ -12,6 +12,7 @@ export {
   type StationDatums,
   stationDatums,
 } from './published-constants.js';
+export { type Refusal, refusal } from './refusal.js';
 export { type Accuracy, type AccuracyRow, recordAccuracy } from './record.js';
 export {
   checkVector,

@@ -45,7 +45,7 @@ function exportsOf(file) {
 }
 
 /** Entries of a package besides its root, by the file they stand in. */
-const ENTRIES = { core: ['trig', 'long-work'], basis: ['kernels'] };
+const ENTRIES = { core: ['trig', 'long-work'], basis: ['kernels'], arguments: ['sky'] };
 
 function reExports(name) {
   const exported = (word, names, from) => {

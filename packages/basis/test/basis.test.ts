@@ -1,23 +1,14 @@
-import { HOUR, InputError, MINUTE } from '@staithe/core';
+import { HOUR, MINUTE } from '@staithe/core';
 import {
   expectWithin,
   hourlySeries,
   publishedConstants,
   recordAccuracy,
+  refusal,
 } from '@staithe/test-vectors';
 import { describe, expect, it } from 'vitest';
 import { columnCount, gram, makeBasis, projectInto, synthesizeInto } from '../src/index.js';
 import { makeStretcher } from '../src/kernels.js';
-
-function refusal(run: () => unknown): InputError {
-  try {
-    run();
-  } catch (error) {
-    if (error instanceof InputError) return error;
-    throw error;
-  }
-  throw new Error('expected a refusal');
-}
 
 describe('official hourly predictions of La Jolla, 2010 to 2020', () => {
   const official = hourlySeries('la-jolla-predicted-2010-2020');

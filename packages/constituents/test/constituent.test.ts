@@ -1,5 +1,5 @@
-import { expectAngleWithin } from '@staithe/test-vectors';
-import { InputError } from '@staithe/core';
+import { expectAngleWithin, refusal } from '@staithe/test-vectors';
+
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
@@ -12,16 +12,6 @@ import {
   parseDoodsonNumber,
   parseXdo,
 } from '../src/index.js';
-
-function refusal(run: () => unknown): InputError {
-  try {
-    run();
-  } catch (error) {
-    if (error instanceof InputError) return error;
-    throw error;
-  }
-  throw new Error('expected a refusal');
-}
 
 const words = (name: string): string[] =>
   (constituent(name).composition ?? []).map((m) => `${m.multiplicity} ${m.name}`);

@@ -1,27 +1,17 @@
 import fc from 'fast-check';
+import { refusal } from '@staithe/test-vectors';
 import { describe, expect, it } from 'vitest';
 import {
   DAY,
   EARLIEST,
   formatInstant,
   HOUR,
-  InputError,
   LATEST,
   MINUTE,
   toInstant,
   toSpan,
   toStep,
 } from '../src/index.js';
-
-function refusal(run: () => unknown): InputError {
-  try {
-    run();
-  } catch (error) {
-    if (error instanceof InputError) return error;
-    throw error;
-  }
-  throw new Error('expected a refusal');
-}
 
 describe('toInstant', () => {
   it('reads ISO 8601 with Z or an offset', () => {

@@ -10,7 +10,7 @@ import { angleDifference, type HarmonicConstants } from '@staithe/core';
 import { makePlan } from '@staithe/predict';
 import type { AbsentLevel, HarmonicLevels, TideClass } from './types.js';
 
-/** Form number above which springs and neaps of M2 and S2 say nothing about the tide. */
+/** Form number above which spring and neap tides of M2 and S2 say nothing about the tide. */
 const MIXED = 1.5;
 
 function classOf(form: number): TideClass {
@@ -67,7 +67,7 @@ export function harmonicLevels(constants: HarmonicConstants): HarmonicLevels {
   else if (form !== undefined && form > MIXED) {
     refuse(
       springs,
-      `form number ${form.toFixed(2)} is over ${MIXED}: springs and neaps do not rule this tide`,
+      `form number ${form.toFixed(2)} is over ${MIXED}: spring and neap tides do not rule here`,
     );
   } else {
     const [a, b] = [m2 as number, s2 as number];

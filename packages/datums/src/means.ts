@@ -23,7 +23,7 @@ function standardError(values: readonly number[]): number {
   return Math.sqrt(squares / Math.max(1, values.length - 1) / values.length);
 }
 
-/** Means of the blocks that hold at least half as many values as the middle one: a stub would weigh as much as a month. */
+/** Means of the blocks that hold at least half as many values as the middle one: two days of March would weigh as much as a month. */
 function blockMeans(
   times: ArrayLike<number>,
   values: ArrayLike<number>,

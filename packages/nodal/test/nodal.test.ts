@@ -1,21 +1,11 @@
 import { constituent, listConstituents } from '@staithe/constituents';
-import { InputError } from '@staithe/core';
-import { expectAngleWithin, expectWithin } from '@staithe/test-vectors';
+
+import { expectAngleWithin, expectWithin, refusal } from '@staithe/test-vectors';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { nodalCorrection, nodalPlan, sideLines } from '../src/index.js';
 
 const T = '1988-03-14T00:00Z';
-
-function refusal(run: () => unknown): InputError {
-  try {
-    run();
-  } catch (error) {
-    if (error instanceof InputError) return error;
-    throw error;
-  }
-  throw new Error('expected a refusal');
-}
 
 describe('nodalCorrection', () => {
   it('is 1 and 0 for the Sun, the weather and the model none', () => {

@@ -1,5 +1,5 @@
-import { DAY, HOUR, InputError, MINUTE } from '@staithe/core';
-import { expectWithin } from '@staithe/test-vectors';
+import { DAY, HOUR, MINUTE } from '@staithe/core';
+import { expectWithin, refusal } from '@staithe/test-vectors';
 import { describe, expect, it } from 'vitest';
 import {
   findTurningPoints,
@@ -20,16 +20,6 @@ const quay = place(
   ],
   { meanLevel: 2.5, secularRate: { metresPerYear: 0.01, at: '2030-01-01T00:00Z' } },
 );
-
-function refusal(run: () => unknown): InputError {
-  try {
-    run();
-  } catch (error) {
-    if (error instanceof InputError) return error;
-    throw error;
-  }
-  throw new Error('expected a refusal');
-}
 
 describe('tideCurve', () => {
   const curve = tideCurve(quay);

@@ -158,7 +158,7 @@ test("the host's zone does not matter", () => {
   vi.stubEnv('TZ', 'UTC');
   const here = draw();
   vi.stubEnv('TZ', 'Pacific/Kiritimati');
-  // The stub must reach the host's clock, else this test would say nothing.
+  // The setting must reach the host's clock, else this test would say nothing.
   expect(new Date(0).getTimezoneOffset()).toBe(640);
   expect(draw()).toBe(here);
   expect(

@@ -10,3 +10,12 @@ export {
   lunisolarLongitudesTT,
   lunisolarRates,
 } from '@staithe/arguments';
+export type { LunarApsis, MoonPhase, Season, SkyPosition } from '@staithe/arguments/sky';
+export {
+  lunarApsides,
+  moonPhases,
+  moonPosition,
+  seasons,
+  sunAltitude,
+  sunPosition,
+} from '@staithe/arguments/sky';

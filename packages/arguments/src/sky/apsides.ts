@@ -20,26 +20,18 @@ export interface LunarApsis {
 }
 
 const KINDS = ['perigee', 'apogee'] as const;
-/** Degrees: the book's epoch of the mean perigee has four decimals only. */
-const CUT = 0.0006;
 
 // Columns D, M, F, terms in the order of the multipliers; sines in 1e-4 days, at perigee and at apogee.
-const TERMS = /* @__PURE__ */ table(`
-0 0 0 0 0 0 0 1 1 1 1 2 2 2 2 2 2 2 2 2 2 2 3 3 3 4 4 4 4 4 4 4 4 5 5 6 6 6 6 6 6 7 8 8 8 9 10 10 11 12 12 13 14 14 16 16 18 18 20 20 22 22 24
--2 -1 0 0 1 1 2 -1 0 1 2 -2 -1 -1 0 0 0 0 1 1 2 2 0 1 2 -2 -2 -1 0 0 0 0 1 0 1 -2 -1 0 0 0 1 0 -1 0 1 0 -1 0 0 -1 0 0 -1 0 -1 0 -1 0 -1 0 -1 0 0
-2 2 2 4 0 2 0 0 0 0 0 0 0 2 -2 0 2 4 -2 0 -2 0 0 0 0 0 2 0 -4 -2 0 2 0 0 0 0 0 -2 0 2 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0
--6 7 129 -8 502 0 7 -4 237 -32 -10 -27 -773 0 0 -16769 -53 7 8 40 -6 5 -112 14 11 24 -11 422 5 -14 4589 27 -29 66 -14 -21 -256 8 -1856 -14 19 -41 162 883 -14 27 -104 -460 -18 69 253 13 -46 -145 31 86 -21 -52 13 32 -9 -21 6
-0 0 212 0 456 3 6 -3 -189 36 0 22 426 3 -34 4392 47 0 0 5 0 5 -17 7 0 10 0 113 0 -4 684 13 0 -4 0 4 34 0 144 4 0 0 11 35 0 0 4 9 0 0 3 0 0 0 0 0 0 0 0 0 0 0 0
-`);
+const TERMS =
+  /* @__PURE__ */ table(`4 2 2 2 4 6 0 0 1 1 1 1 2 2 2 2 2 3 3 3 4 4 4 4 5 5 6 6 6 6 7 8 8 8 9 10 10 11 12 12 13 14 14 16 16 18 18 20 20 22 22 24 0 0 0 0 2 2 4 4 6 0 2
+0 0 1 2 0 0 1 2 -1 0 1 2 -2 -1 0 1 2 0 1 2 -2 -1 0 1 0 1 -2 -1 0 1 0 -1 0 1 0 -1 0 0 -1 0 0 -1 0 -1 0 -1 0 -1 0 -1 0 0 -2 -1 0 1 -1 0 -2 0 0 0 0
+-4 -2 -2 -2 -2 -2 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 0 2 2 2 2 2 2 2 2 2 4 4
+5 0 8 -6 -14 8 502 7 -4 237 -32 -10 -27 -773 -16769 40 5 -112 14 11 24 422 4589 -29 66 -14 -21 -256 -1856 19 -41 162 883 -14 27 -104 -460 -18 69 253 13 -46 -145 31 86 -21 -52 13 32 -9 -21 6 -6 7 129 0 0 -53 -11 27 -14 -8 7
+0 -34 0 0 -4 0 456 6 -3 -189 36 0 22 426 4392 5 5 -17 7 0 10 113 684 0 -4 0 4 34 144 0 0 11 35 0 0 4 9 0 0 3 0 0 0 0 0 0 0 0 0 0 0 0 0 0 212 3 3 47 0 13 4 0 0`);
 
-/** Julian centuries TT of the mean apsis: the Moon's mean anomaly passes so many half turns, even at perigee. */
-export function meanApsis(halves: number): number {
-  return whenPassed(moonAnomaly, halves * 180 - CUT);
-}
-
-/** Julian centuries TT of the true apsis. */
+/** Julian centuries TT of an apsis, counted in half turns of the Moon's mean anomaly: even ones are perigees. */
 export function trueApsis(halves: number): number {
-  const t = meanApsis(halves);
+  const t = whenPassed(moonAnomaly, halves * 180);
   const angles = [elongation, sunAnomaly, nodeDistance].map((angle) => angle(t));
   const column = halves & 1;
   const [sines] = periodic(TERMS, angles, t, column);
@@ -59,9 +51,8 @@ export function trueApsis(halves: number): number {
  * @public
  */
 export function lunarApsides(span: Span): readonly LunarApsis[] {
-  return eventsIn(span, KINDS, moonAnomaly, trueApsis).map(({ kind, time }) => ({
-    kind,
-    time,
-    distance: moonOfDate(centuriesAt(time)).distance,
+  return eventsIn(span, KINDS, moonAnomaly, trueApsis).map((event) => ({
+    ...event,
+    distance: moonOfDate(centuriesAt(event.time))[2],
   }));
 }

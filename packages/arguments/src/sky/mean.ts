@@ -1,9 +1,9 @@
 /**
  * Mean longitudes and anomalies of Moon and Sun, and the events that come round with them.
  *
- * Source: J. Meeus, Astronomical Algorithms, 2nd ed. (1998), eq. 47.1 to 47.5 and 25.2; terms below 6e-6° within the
- * years taken are left out. His mean phases (49.1) and mean apsides (50.1) are the instants where two of these angles
- * pass multiples of 90° and 180°, and are found from them.
+ * Source: J. Meeus, Astronomical Algorithms, 2nd ed. (1998), eq. 47.1 to 47.5 and 25.2, from memory. Powers of time
+ * below 6e-5° from 1700 to 2200 are left out, here and in the whole folder. His mean phases (49.1) and mean apsides
+ * (50.1) are the instants where two of these angles pass multiples of 90° and 180°, and are found from them.
  * @module
  */
 import { type Degrees, type Instant, type Span, toSpan } from '@staithe/core';
@@ -14,7 +14,7 @@ type Turning = (t: number) => Degrees;
 
 /** L′, mean longitude of the Moon, light-time taken off. */
 export function moonLongitude(t: number): Degrees {
-  return polynomial([218.3164477, 481267.88123421, -0.0015786, 1 / 538841], t);
+  return polynomial([218.3164477, 481267.88123421, -0.0015786], t);
 }
 
 /** L₀, mean longitude of the Sun. */
@@ -24,7 +24,7 @@ export function sunLongitude(t: number): Degrees {
 
 /** D, mean elongation of the Moon. */
 export function elongation(t: number): Degrees {
-  return polynomial([297.8501921, 445267.1114034, -0.0018819, 1 / 545868], t);
+  return polynomial([297.8501921, 445267.1114034, -0.0018819], t);
 }
 
 /** M, mean anomaly of the Sun. */
@@ -39,7 +39,7 @@ export function moonAnomaly(t: number): Degrees {
 
 /** F, mean distance of the Moon from its ascending node. */
 export function nodeDistance(t: number): Degrees {
-  return polynomial([93.272095, 483202.0175233, -0.0036539, -1 / 3526000], t);
+  return polynomial([93.272095, 483202.0175233, -0.0036539], t);
 }
 
 /** The Moon's mean ascending node Ω. */

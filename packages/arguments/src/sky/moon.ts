@@ -1,39 +1,22 @@
 /**
  * The Moon's place.
  *
- * Source: J. Meeus, Astronomical Algorithms, 2nd ed. (1998), chapter 47; nutation chapter 22, the short series (0.5″).
+ * Source: J. Meeus, Astronomical Algorithms, 2nd ed. (1998), chapter 47.
  * @module
  */
-import { type Degrees, type InstantLike, toInstant, wrapDegrees } from '@staithe/core';
-import {
-  elongation,
-  moonAnomaly,
-  moonLongitude,
-  nodeDistance,
-  nodeLongitude,
-  sunAnomaly,
-  sunLongitude,
-} from './mean.js';
+import { type Degrees, type InstantLike, toInstant } from '@staithe/core';
+import { elongation, moonAnomaly, moonLongitude, nodeDistance, sunAnomaly } from './mean.js';
 import { LATITUDE, LONGITUDE_AND_DISTANCE, OTHERS } from './moon-terms.js';
-import { meanObliquity, placeFrom, type SkyPosition } from './position.js';
-import { centuriesAt, periodic, table } from './series.js';
+import { nutation } from './nutation.js';
+import { placeFrom, type SkyPosition } from './position.js';
+import { centuriesAt, periodic } from './series.js';
 
-// Columns Ω, L₀, L′; nutation in longitude (sine) and in obliquity (cosine), arcseconds.
-const NUTATION = /* @__PURE__ */ table(`
-0 0 1 2
-0 2 0 0
-2 0 0 0
--0.23 -1.32 -17.2 0.21
-0.1 0.57 9.2 -0.09
-`);
 const MEAN_DISTANCE = 385000.56;
 
-/** Ecliptic longitude and latitude, mean equinox of date, without nutation, degrees; distance, km. */
-export function moonOfDate(t: number): {
-  readonly longitude: Degrees;
-  readonly latitude: Degrees;
-  readonly distance: number;
-} {
+/** Ecliptic longitude (not wrapped) and latitude, mean equinox of date, without nutation, degrees; distance, km. */
+export function moonOfDate(
+  t: number,
+): readonly [longitude: Degrees, latitude: Degrees, distance: number] {
   const mean = moonLongitude(t);
   const angles = [elongation(t), sunAnomaly(t), moonAnomaly(t), nodeDistance(t)];
   const others = [
@@ -44,16 +27,11 @@ export function moonOfDate(t: number): {
     ...angles.slice(2),
   ];
   const [longitude, distance] = periodic(LONGITUDE_AND_DISTANCE, angles, t, 0, 1);
-  return {
-    longitude: wrapDegrees(mean + (longitude + periodic(OTHERS, others)[0]) * 1e-6),
-    latitude: (periodic(LATITUDE, angles, t)[0] + periodic(OTHERS, others, 0, 1)[0]) * 1e-6,
-    distance: MEAN_DISTANCE + distance / 1000,
-  };
-}
-
-/** Nutation in longitude and in obliquity, arcseconds. */
-export function nutation(t: number): readonly [inLongitude: number, inObliquity: number] {
-  return periodic(NUTATION, [nodeLongitude(t), sunLongitude(t), moonLongitude(t)], 0, 0, 1);
+  return [
+    mean + (longitude + periodic(OTHERS, others)[0]) * 1e-6,
+    (periodic(LATITUDE, angles, t)[0] + periodic(OTHERS, others, 0, 1)[0]) * 1e-6,
+    MEAN_DISTANCE + distance / 1000,
+  ];
 }
 
 /**
@@ -71,12 +49,6 @@ export function nutation(t: number): readonly [inLongitude: number, inObliquity:
  */
 export function moonPosition(t: InstantLike): SkyPosition {
   const centuries = centuriesAt(toInstant(t, 't'));
-  const { longitude, latitude, distance } = moonOfDate(centuries);
-  const [inLongitude, inObliquity] = nutation(centuries);
-  return placeFrom(
-    longitude + inLongitude / 3600,
-    latitude,
-    distance,
-    meanObliquity(centuries) + inObliquity / 3600,
-  );
+  const [longitude, latitude, distance] = moonOfDate(centuries);
+  return placeFrom(longitude + nutation(centuries)[0] / 3600, latitude, distance, centuries);
 }

@@ -1,12 +1,13 @@
 /**
  * A place in the sky, and the turn from ecliptic to equator.
  *
- * Source: J. Meeus, Astronomical Algorithms, 2nd ed. (1998), eq. 13.3, 13.4 in rectangular form; obliquity eq. 22.2.
+ * Source: J. Meeus, Astronomical Algorithms, 2nd ed. (1998), eq. 13.3, 13.4 in rectangular form.
  * @module
  */
 import { type Degrees, radiansToDegrees, wrapDegrees } from '@staithe/core';
 import { atan2 } from '@staithe/core/trig';
-import { polynomial, sinCos } from './series.js';
+import { obliquity } from './nutation.js';
+import { sinCos } from './series.js';
 
 /** An apparent place seen from the centre of the Earth, true equinox of date. @public */
 export interface SkyPosition {
@@ -20,11 +21,6 @@ export interface SkyPosition {
   readonly rightAscension: Degrees;
   /** Declination, degrees north. */
   readonly declination: Degrees;
-}
-
-/** Mean obliquity of the ecliptic, from Julian centuries TT. */
-export function meanObliquity(t: number): Degrees {
-  return polynomial([84381.448, -46.815, -0.00059, 0.001813], t) / 3600;
 }
 
 /** Longitude and latitude counted from a plane that is tilted about the origin of longitude. */
@@ -45,13 +41,13 @@ export function turned(
   ];
 }
 
-/** Adds right ascension and declination to ecliptic coordinates. */
+/** Adds right ascension and declination to ecliptic coordinates at t, Julian centuries TT. */
 export function placeFrom(
   longitude: Degrees,
   latitude: Degrees,
   distance: number,
-  obliquity: Degrees,
+  t: number,
 ): SkyPosition {
-  const [rightAscension, declination] = turned(longitude, latitude, obliquity);
+  const [rightAscension, declination] = turned(longitude, latitude, obliquity(t));
   return { longitude: wrapDegrees(longitude), latitude, distance, rightAscension, declination };
 }

@@ -19,11 +19,6 @@ export interface Season {
 
 const KINDS = ['march-equinox', 'june-solstice', 'september-equinox', 'december-solstice'] as const;
 
-/** Julian centuries TT of a season, counted in quarters of a year: 4 is the March equinox of 2000. */
-export function seasonOf(quarters: number): number {
-  return whenPassed(apparentLongitude, quarters * 90);
-}
-
 /**
  * Equinoxes and solstices in a span.
  *
@@ -36,5 +31,7 @@ export function seasonOf(quarters: number): number {
  * @public
  */
 export function seasons(span: Span): readonly Season[] {
-  return eventsIn(span, KINDS, sunLongitude, seasonOf);
+  return eventsIn(span, KINDS, sunLongitude, (quarters) =>
+    whenPassed(apparentLongitude, quarters * 90),
+  );
 }

@@ -5,7 +5,7 @@
  * checked against his worked examples and against an independent library (test/sky*). Here: E, eq. 47.6.
  * @module
  */
-import { DAY, type Degrees, degreesToRadians, type Instant, wrapDegrees } from '@staithe/core';
+import { DAY, type Degrees, degreesToRadians, type Instant } from '@staithe/core';
 import { sinCosInto } from '@staithe/core/trig';
 import { deltaTAt } from '../delta-t.js';
 
@@ -39,7 +39,7 @@ export function polynomial(coefficients: readonly number[], x: number): number {
 /** Sine and cosine of degrees. */
 export function sinCos(angle: Degrees): readonly [sine: number, cosine: number] {
   const pair = new Float64Array(2);
-  sinCosInto(degreesToRadians(wrapDegrees(angle)), pair);
+  sinCosInto(degreesToRadians(angle), pair);
   return pair as unknown as readonly [number, number];
 }
 
@@ -48,10 +48,7 @@ export type Columns = readonly (readonly number[])[];
 
 /** Reads a table written as text, a column a line. */
 export function table(text: string): Columns {
-  return text
-    .trim()
-    .split('\n')
-    .map((line) => line.split(' ').map(Number));
+  return text.split('\n').map((line) => line.split(' ').map(Number));
 }
 
 /**
@@ -59,8 +56,8 @@ export function table(text: string): Columns {
  *
  * @param columns - The table.
  * @param angles - Degrees. The second is the Sun's mean anomaly, where there is one.
- * @param t - Julian centuries TT. As the Earth's orbit grows rounder, terms in the Sun's anomaly wane: by E once or
- * twice, as they have it once or more often.
+ * @param t - Julian centuries TT, where there is an anomaly: as the Earth's orbit grows rounder, a term that has it n
+ * times wanes by Eⁿ.
  * @param ofSine - Which coefficient goes with the sine.
  * @param ofCosine - Which with the cosine.
  * @returns Σ coefficient · sine, and Σ coefficient · cosine.
@@ -73,12 +70,11 @@ export function periodic(
   ofCosine: number = ofSine,
 ): readonly [sines: number, cosines: number] {
   const sums: [number, number] = [0, 0];
-  const factor = 1 - t * (0.002516 + 0.0000074 * t);
   columns[0]?.forEach((_, term) => {
-    const at = (column: number): number => columns[column]?.[term] as number;
+    const at = (column: number): number => (columns[column] as readonly number[])[term] as number;
     const pair = sinCos(angles.reduce((sum, angle, column) => sum + angle * at(column), 0));
-    const anomalies = Math.abs(at(1));
-    const weight = anomalies > 1 ? factor * factor : anomalies > 0 ? factor : 1;
+    // Eⁿ with E = 1 − 0.002516 t, to the first order.
+    const weight = 1 - 0.002516 * t * Math.abs(at(1));
     sums[0] += weight * pair[0] * at(angles.length + ofSine);
     sums[1] += weight * pair[1] * at(angles.length + ofCosine);
   });
