@@ -146,6 +146,14 @@ describe('names', () => {
     // 27.554550 days: the trade rounds 27.55455 up.
     expectWithin(15 / constituent('Mm').speed, periods['perigeeDays'] as number, { abs: 5.1e-5 });
     expectWithin(15 / constituent('Mf').speed, periods['declinationDays'] as number, { abs: 5e-5 });
+    // The node and the perigee: 18.61 and 8.85 years of 365.25 days; the tropical month from Mf, half of it.
+    const { p, nPrime } = lunisolarRates('2000-01-01T12:00Z');
+    const years = (rate: number): number => 360 / rate / 24 / 365.25;
+    expectWithin(years(nPrime), periods['nodeYears'] as number, { abs: 5e-3 });
+    expectWithin(years(p), periods['perigeeYears'] as number, { abs: 5e-3 });
+    expectWithin(30 / constituent('Mf').speed, periods['tropicalMonthDays'] as number, {
+      abs: 5e-5,
+    });
     for (const [pair, days] of Object.entries(separationDays)) {
       const [a, b] = pair.split('-') as [string, string];
       expectWithin(
