@@ -106,7 +106,7 @@ describe('the five sentences follow the data', () => {
     );
     expect(samples).toContain(`${record.runs.filter(({ flag }) => flag === 4).length} rejected`);
     expect(lines).toContain('27 constituents is M2 with 1482 mm within 6.0 mm');
-    expect(lines).toContain('19 are firm, 5 faint and 3 borrowed');
+    expect(lines).toContain('19 firm, 5 faint, 3 borrowed');
     expect(rest).toContain('81 mm typically');
     expect(rest).toContain('402 mm at its worst, on 3 Feb 2030 04:10 UTC+00:00');
     expect(open).toContain(`in ${windows.list.length} windows`);

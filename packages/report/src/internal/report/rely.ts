@@ -27,6 +27,10 @@ function constantsSentence({ input }: Facts): string {
   const { constituents } = input.fit.constants;
   const of = (standing: string): number =>
     constituents.filter((line) => line.standing === standing).length;
+  const grounds = ['firm', 'faint', 'borrowed']
+    .filter((standing) => of(standing) > 0)
+    .map((standing) => `${of(standing)} ${standing}`)
+    .join(', ');
   const longest = max(constituents, ({ amplitude }) => amplitude);
   const strongest = constituents.find(({ amplitude }) => amplitude === longest);
   if (strongest === undefined) return 'The document holds no constituents.';
@@ -35,8 +39,8 @@ function constantsSentence({ input }: Facts): string {
       ? ', with no error stated'
       : ` within ${(strongest.radius95 * 1000).toFixed(1)} mm (95 % disc)`;
   return (
-    `The strongest of ${counted(constituents.length, 'constituent')} is ${cleanText(strongest.name, 12)} with ${millimetres(strongest.amplitude)} mm${sure}; ` +
-    `${of('firm')} are firm, ${of('faint')} faint and ${of('borrowed')} borrowed.`
+    `The strongest of ${counted(constituents.length, 'constituent')} is ${cleanText(strongest.name, 12)} with ${millimetres(strongest.amplitude)} mm${sure}` +
+    (grounds === '' ? '.' : `; ${grounds}.`)
   );
 }
 
