@@ -33,7 +33,11 @@ export interface CheckLimits {
   readonly besides?: { readonly doubt: Metres; readonly reject: Metres } | false | undefined;
 }
 
-/** A sample against what its neighbours say. @public */
+/**
+ * A sample against what its neighbours say. With `spare` or a reach of 2 or 3, limits grow beside gaps by what the
+ * neighbours left there err in this record.
+ * @public
+ */
 export interface JumpLimits {
   readonly doubt: Metres;
   readonly reject: Metres;
@@ -94,9 +98,12 @@ function deriveInstrument(heights: Float64Array): { doubt: Ends; reject: Ends } 
 
 function deriveJump(signal: CheckSignal): JumpLimits {
   const heights = signal.residual ?? signal.heights;
+  const { times, step } = signal;
   const [near = 0, next = 0, far = 0] = SIXTH;
   const differences = sampleOf(heights.length - 6, (k) => {
     const i = k + 3;
+    const across = (times[i + 3] as number) - (times[i - 3] as number);
+    if (across > 6.5 * step) return Number.NaN; // over a gap it is no sixth difference
     const at = (j: number): number => heights[i + j] as number;
     return at(0) - near * (at(-1) + at(1)) - next * (at(-2) + at(2)) - far * (at(-3) + at(3));
   });

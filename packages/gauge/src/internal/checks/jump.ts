@@ -2,62 +2,24 @@
  * Spike: a sample against what its neighbours say.
  *
  * The standard's test takes the mean of the two neighbours and blames all three samples. With a reach of 2 or 3 a
- * polynomial through the neighbours follows the tide's curve; `spare` takes the worst sample of a cluster out first
- * and judges the others without it; `rough` allows more where the water is rougher than usual.
+ * polynomial through the neighbours follows the tide's curve, and beside a gap a sample is allowed what the nodes left
+ * to it err more; `spare` takes the worst sample of a cluster out first and judges the others without it; `rough`
+ * allows more where the water is rougher than usual.
  * @module
  */
 import type { JumpLimits } from '../../limits.js';
 import { medianOf, sampleOf } from '../robust.js';
+import { neighboursOf } from './neighbours.js';
 import type { CheckSignal, Note } from './signal.js';
 
 const LARGEST_CLUSTER = 500; // candidates in a row; beyond that the record is noise and nobody is spared
 const AROUND = 60; // samples on each side that say how rough the water is
-const WILDEST = 3; // a polynomial whose weights add up to more than this is replaced by a straight line
 
-/** What neighbours say about sample i, NaN where there is none on a side. */
-function reference(
-  signal: CheckSignal,
-  heights: Float64Array,
-  bad: Uint8Array,
-  i: number,
-  reach: number,
-): number {
-  const { times, step } = signal;
-  const here = times[i] as number;
-  const farthest = reach * 2 * step + step / 2;
-  const side = (direction: 1 | -1): number[] => {
-    const found: number[] = [];
-    for (
-      let j = i + direction;
-      j >= 0 && j < heights.length && found.length < reach;
-      j += direction
-    ) {
-      if (Math.abs((times[j] as number) - here) > farthest) break;
-      if (bad[j] === 0) found.push(j);
-    }
-    return found;
-  };
-  const left = side(-1);
-  const right = side(1);
-  const each = Math.min(left.length, right.length);
-  const through = (count: number): { value: number; size: number } => {
-    const nodes = [...left.slice(0, count), ...right.slice(0, count)];
-    let value = 0;
-    let size = 0;
-    for (const j of nodes) {
-      let weight = 1;
-      for (const k of nodes) {
-        if (k === j) continue;
-        weight *= (here - (times[k] as number)) / ((times[j] as number) - (times[k] as number));
-      }
-      value += weight * (heights[j] as number);
-      size += Math.abs(weight);
-    }
-    return { value, size };
-  };
-  if (each === 0) return Number.NaN;
-  const full = through(each);
-  return full.size <= WILDEST ? full.value : through(1).value;
+/** A sample with its distance from what the neighbours say, and what these may err; metres. */
+interface Suspect {
+  readonly index: number;
+  readonly size: number;
+  readonly errs: number;
 }
 
 /** The standard's mean of the two samples beside it; NaN unless both are there. */
@@ -79,13 +41,19 @@ export function checkJump(
   const heights = limits.of === 'residual' && signal.residual ? signal.residual : signal.heights;
   const { reach = 1, spare = false, rough = false } = limits;
   const bad = rejected.slice();
-  const apart = (i: number): number => {
-    const said =
-      reach === 1 && !spare
-        ? meanOfTwo(signal, heights, bad, i)
-        : reference(signal, heights, bad, i, reach);
-    return Math.abs((heights[i] as number) - said);
+  const isPlain = reach === 1 && !spare; // the standard's own test
+  const neighbours = neighboursOf(signal, heights, bad, reach);
+  const apart = (i: number): number =>
+    isPlain
+      ? Math.abs((heights[i] as number) - meanOfTwo(signal, heights, bad, i))
+      : neighbours.apart(i);
+  /** Judges a sample; what its nodes may err is asked only where that matters. */
+  const suspectAt = (i: number): Suspect => {
+    const size = apart(i);
+    const errs = !isPlain && size > limits.doubt ? neighbours.mayErr(i) : 0;
+    return { index: i, size, errs };
   };
+  const isSuspect = ({ size, errs }: Suspect): boolean => size - errs > limits.doubt;
   const usual = rough ? medianOf(sampleOf(heights.length, apart)) : 0;
   const roughness = (i: number): number => {
     if (!(usual > 0)) return 1;
@@ -93,38 +61,41 @@ export function checkJump(
     const here = sampleOf(Math.min(heights.length, i + AROUND + 1) - from, (k) => apart(from + k));
     return Math.max(1, medianOf(here) / usual);
   };
-  const tell = (i: number, size: number): void => {
-    const factor = roughness(i);
-    const doubt = limits.doubt * factor;
-    const reject = limits.reject * factor;
-    if (size > reject) note(i, 4, size, reject, size);
-    else if (size > doubt) note(i, 3, size, doubt, size);
+  const tell = ({ index, size, errs }: Suspect): void => {
+    const factor = roughness(index);
+    const doubt = (limits.doubt + errs) * factor;
+    const reject = (limits.reject + errs) * factor;
+    if (size > reject) note(index, 4, size, reject, size);
+    else if (size > doubt) note(index, 3, size, doubt, size);
   };
 
-  let cluster: [index: number, size: number][] = [];
+  let cluster: Suspect[] = [];
   const settle = (): void => {
-    const open = new Map(cluster);
-    const found: [number, number][] = [];
+    const open = new Map(cluster.map((suspect) => [suspect.index, suspect]));
+    const found: Suspect[] = [];
     while (spare && open.size > 0 && cluster.length <= LARGEST_CLUSTER) {
-      const [worst, size] = [...open].reduce((a, b) => (b[1] > a[1] ? b : a));
-      if (!(size > limits.doubt)) break;
-      found.push([worst, size]);
-      open.delete(worst);
-      bad[worst] = 1;
+      // By its bare size: no node weighs as much as the sample, so the spike itself stands out the most.
+      const worst = [...open.values()].reduce((a, b) => (b.size > a.size ? b : a));
+      found.push(worst);
+      open.delete(worst.index);
+      bad[worst.index] = 1;
       for (const i of open.keys()) {
-        if (Math.abs(i - worst) <= 2 * reach) open.set(i, apart(i));
+        if (Math.abs(i - worst.index) > 2 * reach) continue;
+        const again = suspectAt(i);
+        if (isSuspect(again)) open.set(i, again);
+        else open.delete(i);
       }
     }
     const settled = spare && cluster.length <= LARGEST_CLUSTER ? found : cluster;
-    for (const [i, size] of settled.sort((a, b) => a[0] - b[0])) tell(i, size);
+    for (const suspect of settled.sort((a, b) => a.index - b.index)) tell(suspect);
     cluster = [];
   };
   for (let i = 0; i < heights.length; i++) {
-    const size = bad[i] ? Number.NaN : apart(i);
-    if (Number.isNaN(size)) skip(i);
     const last = cluster[cluster.length - 1];
-    if (last && i - last[0] > 2 * reach) settle();
-    if (size > limits.doubt) cluster.push([i, size]);
+    if (last && i - last.index > 2 * reach) settle();
+    const suspect = bad[i] ? undefined : suspectAt(i);
+    if (!suspect || Number.isNaN(suspect.size) || suspect.errs === Infinity) skip(i);
+    else if (isSuspect(suspect)) cluster.push(suspect);
   }
   settle();
 }
