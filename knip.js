@@ -45,7 +45,12 @@ export default {
       project: ['src/**/*.ts', 'test/**/*.ts'],
     },
     tools: {
-      entry: ['*/*.mjs', 'examples/given.ts', 'test/**/*.test.{ts,mjs}'],
+      entry: [
+        '*/*.mjs',
+        'examples/given.ts',
+        'docs/constituent-pages.ts',
+        'test/**/*.test.{ts,mjs}',
+      ],
       // The consumers are projects of their own: they run in a sandbox outside the workspace.
       project: ['**/*.{ts,mjs}', '!consumers/*/**'],
     },

@@ -92,7 +92,9 @@ export function readRecord(
     onDisorder: options.disorder,
     datum: options.datum,
   };
-  return inFile(path, () => readGaugeCsv(bytesOf(path), { ...reading, ...work }));
+  return inFile(path, () =>
+    readGaugeCsv(bytesOf(path), { ...reading, onProgress: work.onProgress }),
+  );
 }
 
 /** Reads a constants document, or what `staithe fit --json` printed with one inside. */

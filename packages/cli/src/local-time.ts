@@ -98,9 +98,11 @@ export function dayOf(t: Instant, zone: Zone): Instant {
   return startOfDay(Math.floor((t + zone.offsetAt(t)) / DAY) * DAY, zone);
 }
 
-/** `2031-06` of an instant. */
-export function monthOf(t: Instant, zone: Zone): string {
-  return new Date(t + zone.offsetAt(t)).toISOString().slice(0, 7);
+/** The month of an instant by the zone's clock, `2031-06`, or one so many later. */
+export function monthOf(t: Instant, zone: Zone, later: number = 0): string {
+  const local = new Date(t + zone.offsetAt(t));
+  const first = Date.UTC(local.getUTCFullYear(), local.getUTCMonth() + later, 1);
+  return new Date(first).toISOString().slice(0, 7);
 }
 
 const two = (n: number): string => String(Math.floor(n)).padStart(2, '0');

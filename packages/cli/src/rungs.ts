@@ -58,14 +58,14 @@ function rungsOf(limits: TideLimits, constants: HarmonicConstants, observed?: Ti
   return rungs;
 }
 
-/** A record on the zero that it had before the steps of the constants. */
+/** A record on the zero that it has after the steps of the constants, as the levels and later predictions are. */
 function onOneZero(series: Series, { steps = [] }: HarmonicConstants): Series {
   if (steps.length === 0) return series;
   const times = seriesTimes(series);
   const moves = steps.map(({ at, change }) => ({ at: toInstant(at), change }));
   const values = series.values.map((height, i) =>
     moves.reduce(
-      (left, { at, change }) => ((times[i] as number) >= at ? left - change : left),
+      (left, { at, change }) => ((times[i] as number) < at ? left + change : left),
       height,
     ),
   );
@@ -80,7 +80,10 @@ export function levelsOf(
 ): Levels {
   const limits = astronomicalTideLimits(constants, { span });
   const observed = record && tidalDatums(tabulateTide(onOneZero(record, constants)));
-  const notes = [...limits.warnings, ...(observed?.warnings ?? [])].map(({ message }) => message);
+  const last = constants.steps?.at(-1);
+  const moved = last ? [`levels stand on the zero since the step of ${last.at}`] : [];
+  const found = [...limits.warnings, ...(observed?.warnings ?? [])].map(({ message }) => message);
+  const notes = [...moved, ...found];
   return {
     rungs: rungsOf(limits, constants, observed),
     limits,

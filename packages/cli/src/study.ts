@@ -48,7 +48,7 @@ export async function tryFit(
   work: LongWork,
 ): Promise<HarmonicFit | { readonly reason: string }> {
   try {
-    return await fitHarmonicsAsync(series, { ...options, ...work });
+    return await fitHarmonicsAsync(series, { ...options, onProgress: work.onProgress });
   } catch (error) {
     if (isStaitheError(error) && error.name === 'ComputationError')
       return { reason: error.message };

@@ -47,7 +47,7 @@ export interface HarmonicConstants {
     | undefined;
   /** The vertical datum that `meanLevel` is counted from. */
   readonly datum?: string | undefined;
-  /** Z₀, metres above the datum. */
+  /** Z₀, metres above the datum; before the first of `steps`. */
   readonly meanLevel: Metres;
   readonly secularRate?: { readonly metresPerYear: number; readonly at: string } | undefined;
   /** The level changes by `change` metres from this instant on. */

@@ -8,6 +8,7 @@
 import { constituent } from '@staithe/constituents';
 import { angleDifference, type HarmonicConstants } from '@staithe/core';
 import { makePlan } from '@staithe/predict';
+import { levelAfterSteps } from './means.js';
 import type { AbsentLevel, HarmonicLevels, TideClass } from './types.js';
 
 /** Form number above which spring and neap tides of M2 and S2 say nothing about the tide. */
@@ -33,7 +34,7 @@ function age(constants: HarmonicConstants, a: string, b: string): number | undef
  * Levels that follow from constants.
  *
  * @param constants - A constants document.
- * @returns Metres above its datum; what a place does not have is in `absent` with the reason.
+ * @returns Metres above its datum, from the mean level after its last step; what a place does not have is in `absent` with the reason.
  * @throws InputError of `makePlan`.
  * @example
  * harmonicLevels(constants).tideClass; // 'semidiurnal'
@@ -46,7 +47,7 @@ export function harmonicLevels(constants: HarmonicConstants): HarmonicLevels {
     return found === 0 ? undefined : found;
   };
   const [m2, s2, k1, o1] = [amplitude('M2'), amplitude('S2'), amplitude('K1'), amplitude('O1')];
-  const level = constants.meanLevel;
+  const level = levelAfterSteps(constants);
   const absent: AbsentLevel[] = [];
   const semidiurnal = (m2 ?? 0) + (s2 ?? 0);
   const diurnal = (k1 ?? 0) + (o1 ?? 0);

@@ -2,7 +2,7 @@
  * Means and their standard errors, by blocks of time: what is measured within a block shares its weather.
  * @module
  */
-import { DAY, type Instant } from '@staithe/core';
+import { DAY, type HarmonicConstants, type Instant } from '@staithe/core';
 
 const ENOUGH = 3; // blocks that a standard error is taken from
 
@@ -58,4 +58,9 @@ export function blockError(times: ArrayLike<number>, values: ArrayLike<number>):
   const days = blockMeans(times, values, (t) => Math.floor(t / DAY));
   if (days.length >= ENOUGH) return standardError(days);
   return standardError(Array.from(values).filter((value) => !Number.isNaN(value)));
+}
+
+/** The mean level of a document after the last of its steps: what predictions from then on are counted from. */
+export function levelAfterSteps({ meanLevel, steps = [] }: HarmonicConstants): number {
+  return steps.reduce((level, { change }) => level + change, meanLevel);
 }

@@ -7,6 +7,7 @@
  */
 import { DAY, type HarmonicConstants, InputError, type Span, toSpan } from '@staithe/core';
 import { findTurningPoints, makePlan } from '@staithe/predict';
+import { levelAfterSteps } from './means.js';
 import type { DatumWarning, TideLimit, TideLimits } from './types.js';
 
 const DEFAULT_SPAN: Span = { from: '2020-01-01T00:00Z', to: '2039-01-01T00:00Z' };
@@ -41,7 +42,11 @@ export function astronomicalTideLimits(
       `expected 19 years (6939 days) or more, got ${((to - from) / DAY).toFixed(1)} days`,
     );
   }
-  const plan = { ...makePlan(constants), ratePerMs: 0, steps: [] };
+  const whole = makePlan(constants);
+  const level = levelAfterSteps(constants);
+  const coefficients = whole.coefficients.slice();
+  coefficients[0] = level;
+  const plan = { ...whole, coefficients, ratePerMs: 0, steps: [] };
   const points = findTurningPoints(plan, { from, to });
   if (points.length === 0) {
     throw new InputError(
@@ -79,7 +84,7 @@ export function astronomicalTideLimits(
     from,
     to,
     meanLevel: {
-      height: constants.meanLevel,
+      height: level,
       datum: constants.datum,
       epoch: constants.record && { from: constants.record.from, to: constants.record.to },
     },

@@ -15,6 +15,7 @@ import { nodalPlan } from '@staithe/nodal';
 import type { Candidate } from './types.js';
 
 const LEAVE = 0.97;
+const CENTURY = 36525; // days
 const SMALLEST = 2e-3; // m in the potential: below this a line is not proposed by itself
 // Expected sizes where the potential says little, metres in its scale: seasonal and daily weather, shallow water.
 const WEATHER_SIZE = 0.012;
@@ -104,11 +105,12 @@ export function takeResolvable(
       });
       continue;
     }
-    if (needed === Infinity) {
+    if (needed > CENTURY) {
+      const words = needed === Infinity ? 'same speed as' : 'no record is long enough beside';
       candidates.push({
         name,
         decision: 'left',
-        reason: `same speed as ${rival.name}`,
+        reason: `${words} ${rival.name}`,
         beside: rival.name,
       });
       continue;

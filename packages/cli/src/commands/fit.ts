@@ -42,7 +42,7 @@ export async function fitRecord(
   const judged = judge(record);
   const series = options.everySample ? record.series : judged.kept;
   const fit = await inFile(file, () =>
-    fitHarmonicsAsync(series, { ...asked, ...originOf(record, file), ...work }),
+    fitHarmonicsAsync(series, { ...asked, ...originOf(record, file), onProgress: work.onProgress }),
   );
   return { record, judged, fit, findings: findingsBy(record, fit) };
 }

@@ -2,7 +2,7 @@
  * staithe report: one page that answers for every number.
  * @module
  */
-import { DAY, HOUR, MINUTE } from '@staithe/core';
+import { DAY, HOUR, MINUTE, toInstant } from '@staithe/core';
 import { tideCurve } from '@staithe/predict';
 import { caution, reportHtml } from '@staithe/report';
 import type { Command } from 'commander';
@@ -51,10 +51,7 @@ async function pageOf(file: string, options: Options, fitted: Fitted): Promise<s
   const { constants } = fit;
   const zone = readZone(options.zone);
   // The month after the record, where nobody asks for another: a report that is made twice is the same twice.
-  const { month, span } = readMonth(
-    options.month ?? monthOf(fit.diagnostics.to + 31 * DAY, zone),
-    zone,
-  );
+  const { month, span } = readMonth(options.month ?? monthOf(fit.diagnostics.to, zone, 1), zone);
   const curve = tideCurve(constants);
   const { above, below } = options;
   const asksWindows = above !== undefined || below !== undefined;
@@ -68,7 +65,10 @@ async function pageOf(file: string, options: Options, fitted: Fitted): Promise<s
     record: {
       series: record.series,
       runs: judged.check.reasons,
-      steps: findings.filter((finding) => finding.kind === 'zero-moved'),
+      steps: [
+        ...(constants.steps ?? []).map(({ at, change }) => ({ at: toInstant(at), change })),
+        ...findings.filter((finding) => finding.kind === 'zero-moved'),
+      ],
       findings: record.warnings.map(({ message }) => message),
     },
     fit,

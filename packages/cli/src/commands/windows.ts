@@ -32,6 +32,9 @@ async function run(file: string, options: Options): Promise<number> {
   if (above === undefined && below === undefined) {
     throw new InputError('MISSING', '--above', 'expected --above or --below, got neither');
   }
+  if (above !== undefined && below !== undefined && above > below) {
+    throw new InputError('CONFLICT', '--above', `expected up to --below ${below}, got ${above}`);
+  }
   const span = readSpan(options, 30);
   const rules = await checkOutput(options, [file]);
   const constants = await readConstants(file);
