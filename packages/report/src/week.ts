@@ -55,7 +55,7 @@ interface Strip {
   readonly top: number;
 }
 
-const MARGIN = { left: 40, right: 12, above: 32, below: 28, day: 20 };
+const MARGIN = { left: 40, right: 20, above: 32, below: 28, day: 20 };
 const TALL = 118; // of the curve
 
 function drawStrip(

@@ -187,7 +187,7 @@ describe('weekSvg', () => {
     );
     const wide = bars.map((node) => number(node, 'width'));
     // No window crosses midnight into another strip here: seven days stand in one strip at this width.
-    const perDay = (1000 - 40 - 12) / 7;
+    const perDay = (1000 - 40 - 20) / 7;
     expect(wide).toHaveLength(windows.length);
     windows.forEach(({ from, to }, i) => {
       expect(Math.abs((wide[i] as number) - ((to - from) / DAY) * perDay)).toBeLessThan(PIXEL);
