@@ -92,7 +92,8 @@ const findings = [];
 let written = 0;
 for (const entry of all) {
   const path = join(entry.directory, 'README.md');
-  if (!existsSync(path)) continue;
+  // A command has no API.
+  if (!existsSync(path) || entry.entries.length === 0) continue;
   const text = readFileSync(path, 'utf8');
   const section = sectionOf(entry);
   const wanted = SECTION.test(text)

@@ -14,64 +14,8 @@ import {
 import { lunisolarLongitudesInto, lunisolarRates } from '@staithe/arguments';
 import { type CompoundMember, parseCompound } from './compound.js';
 import { type DoodsonNumbers, parseXdo } from './doodson.js';
+import type { KnownConstituent } from './known.js';
 import { ALIASES, LISTED_COMPOUNDS, NAMED } from './table.js';
-
-/** The names of the constituents on lines of the potential that are listed. @public */
-export type KnownConstituent =
-  | 'Sa'
-  | 'Ssa'
-  | 'MSm'
-  | 'Mm'
-  | 'MSf'
-  | 'Mf'
-  | 'Mtm'
-  | 'MSqm'
-  | '2Q1'
-  | 'SIG1'
-  | 'Q1'
-  | 'RHO1'
-  | 'O1'
-  | 'TAU1'
-  | 'BET1'
-  | 'M1'
-  | 'CHI1'
-  | 'PI1'
-  | 'P1'
-  | 'S1'
-  | 'K1'
-  | 'PSI1'
-  | 'PHI1'
-  | 'THE1'
-  | 'J1'
-  | 'OO1'
-  | 'UPS1'
-  | 'EPS2'
-  | '2N2'
-  | 'MU2'
-  | 'N2'
-  | 'NU2'
-  | 'GAM2'
-  | 'H1'
-  | 'M2'
-  | 'H2'
-  | 'LAM2'
-  | 'L2'
-  | 'T2'
-  | 'S2'
-  | 'R2'
-  | 'K2'
-  | 'ETA2'
-  | 'M3'
-  | 'M4'
-  | 'MS4'
-  | 'MN4'
-  | 'S4'
-  | 'M6'
-  | '2MS6'
-  | 'M8'
-  | 'MK3'
-  | '2MK3'
-  | '2SM2';
 
 /** A name: a listed one (for completion in editors), an alias, or a compound. @public */
 export type ConstituentName = KnownConstituent | (string & {});

@@ -8,7 +8,6 @@ export {
   type ConstituentName,
   constituent,
   equilibriumArgument,
-  type KnownConstituent,
   listConstituents,
 } from './constituent.js';
 export {
@@ -18,5 +17,6 @@ export {
   parseDoodsonNumber,
   parseXdo,
 } from './doodson.js';
+export type { KnownConstituent } from './known.js';
 export { constituentsNear, groupsResolvableIn, separationTime } from './near.js';
 export { type PotentialLine, potentialLines } from './potential.js';

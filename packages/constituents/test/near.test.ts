@@ -1,5 +1,6 @@
 import { DAY, InputError } from '@staithe/core';
-import { expectWithin, loadVector } from '@staithe/test-vectors';
+import { readFileSync } from 'node:fs';
+import { expectWithin, loadVector, publishedConstants } from '@staithe/test-vectors';
 import { describe, expect, it } from 'vitest';
 import {
   constituent,
@@ -38,6 +39,18 @@ describe('the list', () => {
   it('finds by Doodson numbers', () => {
     const found = listConstituents({ doodsonNumbers: [1, 0, 0, 1, 0, 0] }).map(({ name }) => name);
     expect(found).toEqual(['M1', 'NO1']);
+  });
+});
+
+describe('names for completion in editors', () => {
+  it('are those of the table, each known', () => {
+    const text = readFileSync(new URL('../src/known.ts', import.meta.url), 'utf8');
+    const names = [...text.matchAll(/\| '([^']+)'/g)].map(([, name]) => name as string);
+    for (const name of names) expect(constituent(name).name).toBe(name);
+    for (const { name, kind } of listConstituents())
+      if (kind !== 'compound') expect(names).toContain(name);
+    for (const { name } of publishedConstants('9410230').rows) expect(names).toContain(name);
+    expect(new Set(names).size).toBe(names.length);
   });
 });
 
