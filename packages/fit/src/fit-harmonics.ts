@@ -77,6 +77,7 @@ function effectiveSamples(samples: number, squares: number, density: number): nu
 
 function* fitSteps(series: Series, options: FitOptions): Generator<Progress, HarmonicFit, void> {
   checkKeys(options);
+  readChoice(options.weighting, 'options.weighting', ['equal']);
   const errorModel = readChoice(options.errorModel, 'options.errorModel', [
     'residual-spectrum',
     'independent',

@@ -108,7 +108,7 @@ export function readChoice<T extends string>(
 }
 
 const KNOWN =
-  'constituents borrow secularRate steps errorModel argumentModel nodalModel nodalHold place datum source signal onProgress';
+  'constituents borrow secularRate steps weighting errorModel argumentModel nodalModel nodalHold place datum source signal onProgress';
 
 /** Refuses an option that is not known: a misspelt one would change the result in silence. */
 export function checkKeys(options: FitOptions): void {

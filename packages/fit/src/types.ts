@@ -34,6 +34,8 @@ export interface FitOptions {
   readonly secularRate?: boolean | undefined;
   /** Instants at which the zero of the gauge may have moved. */
   readonly steps?: readonly InstantLike[] | undefined;
+  /** Every sample alike: the one weighting so far. */
+  readonly weighting?: 'equal' | undefined;
   /** Default `residual-spectrum`: noise density at each line from the residual beside it. */
   readonly errorModel?: 'residual-spectrum' | 'independent' | undefined;
   /** Default iers2010. */

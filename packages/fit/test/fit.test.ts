@@ -288,7 +288,7 @@ describe('bad input', () => {
     ['OUT_OF_RANGE options.steps[0]', () => fitHarmonics(good, { steps: [START - DAY] })],
     [
       'UNKNOWN_CHOICE options.weighting',
-      () => fitHarmonics(good, { weighting: 'resistant' } as FitOptions),
+      () => fitHarmonics(good, { weighting: 'resistant' as 'equal' }),
     ],
     [
       'UNKNOWN_CHOICE argumentModel',
