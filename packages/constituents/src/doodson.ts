@@ -1,7 +1,7 @@
 /**
  * Doodson numbers and XDO letters: the written forms of the six multipliers of τ, s, h, p, N′, p_s.
  *
- * Source: A. T. Doodson (1921), Proc. R. Soc. A 100, 305-329 (digits, 5 added to all but the first);
+ * Source: A. T. Doodson (1921), Proc. R. Soc. A 100, 305-329 (digits, 5 added to all but the first; letters beyond 0 to 9 ours);
  * the extended form in letters (Z is 0, A is 1, Y is −1) with a seventh for the quarter turns: common practice.
  * @module
  */
@@ -10,12 +10,25 @@ import { refuse } from '@staithe/core';
 /** Multipliers of τ, s, h, p, N′, p_s. @public */
 export type DoodsonNumbers = readonly [number, number, number, number, number, number];
 
-const DIGITS = '0123456789ABCDEFGHIJKLMNOPQRSTUVWXYZ';
+const LARGEST = 25; // a digit P
+const SMALLEST = -10; // a digit Q
+
+/** 0 to 9, A to P for 10 to 25, Z back to Q for −1 to −10; undefined beyond. */
+function toDigit(value: number): string | undefined {
+  if (!Number.isInteger(value) || value > LARGEST || value < SMALLEST) return undefined;
+  if (value < 0) return String.fromCharCode(91 + value);
+  return value < 10 ? String(value) : String.fromCharCode(55 + value);
+}
+
+function fromDigit(digit: string): number {
+  if (digit <= '9') return Number(digit);
+  return digit.charCodeAt(0) - (digit <= 'P' ? 55 : 91);
+}
 
 /**
- * Reads a Doodson number such as `255.555`; letters stand for 10 and beyond.
+ * Reads a Doodson number such as `255.555`. Letters go on beyond the digits: A to P are 10 to 25, Z to Q −1 to −10.
  *
- * @param text - Six digits or letters, a point after the third allowed.
+ * @param text - Six digits or letters, a point after the third allowed; the first is never negative.
  * @returns The six multipliers.
  * @throws InputError `BAD_NUMBER`, path `doodsonNumber`.
  * @example
@@ -23,21 +36,16 @@ const DIGITS = '0123456789ABCDEFGHIJKLMNOPQRSTUVWXYZ';
  * @public
  */
 export function parseDoodsonNumber(text: string): DoodsonNumbers {
-  const digits = /^([0-9A-Z]{3})\.?([0-9A-Z]{3})$/.exec(text);
-  if (!digits) {
-    refuse('BAD_NUMBER', 'doodsonNumber', 'six digits or letters like 255.555', text);
-  }
-  const numbers = Array.from(
-    `${digits[1]}${digits[2]}`,
-    (c, i) => DIGITS.indexOf(c) - (i > 0 ? 5 : 0),
-  );
+  const digits = /^([0-9A-P][0-9A-Z]{2})\.?([0-9A-Z]{3})$/.exec(text);
+  if (!digits) refuse('BAD_NUMBER', 'doodsonNumber', 'six digits or letters like 255.555', text);
+  const numbers = Array.from(`${digits[1]}${digits[2]}`, (c, i) => fromDigit(c) - (i > 0 ? 5 : 0));
   return numbers as unknown as DoodsonNumbers;
 }
 
 /**
  * Writes a Doodson number.
  *
- * @param of - A constituent, or its six multipliers: the first 0 to 35, the others −5 to 30.
+ * @param of - A constituent, or its six multipliers: the first 0 to 25, the others −15 to 20.
  * @returns Text such as `255.555`.
  * @throws InputError `OUT_OF_RANGE`, path `doodsonNumbers[i]`.
  * @example
@@ -49,10 +57,10 @@ export function formatDoodsonNumber(
 ): string {
   const numbers = 'doodsonNumbers' in of ? of.doodsonNumbers : of;
   const text = numbers.map((n, i) => {
-    const range = i > 0 ? '-5 to 30' : '0 to 35';
+    const range = i > 0 ? '-15 to 20' : '0 to 25';
+    const digit = i > 0 || n >= 0 ? toDigit(n + (i > 0 ? 5 : 0)) : undefined;
     return (
-      DIGITS[n + (i > 0 ? 5 : 0)] ??
-      refuse('OUT_OF_RANGE', `doodsonNumbers[${i}]`, `a whole number from ${range}`, n)
+      digit ?? refuse('OUT_OF_RANGE', `doodsonNumbers[${i}]`, `a whole number from ${range}`, n)
     );
   });
   return `${text.slice(0, 3).join('')}.${text.slice(3).join('')}`;

@@ -3,6 +3,11 @@
  *
  * Multipliers after A. T. Doodson (1921) and P. Schureman (1940), table 2; quarter turns by the sign of the line in
  * Cartwright and Edden (1973), which a test compares; those of Mf and Mm are left out, as the trade does.
+ *
+ * Names that mean two things, and whose each entry is: M1 is 155.655 of Schureman and of official tables, M1B 155.455,
+ * M1C 155.555 of degree 3 (Doodson's M1), NO1 the compound N2 − O1 at the frequency of M1; L2 is 265.455, L2B 265.655;
+ * MSf is the line 073.555, SM0 the compound S2 − M2; Sa is 056.555 (h) of official tables, SAA 056.554 (h − p_s), the
+ * anomalistic year; S1 is 164.555 of the daily weather, not the line 164.556.
  * @module
  */
 
