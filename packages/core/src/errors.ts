@@ -39,11 +39,7 @@ export type InputErrorCode =
   | 'INSEPARABLE';
 
 /** Why a sound input could not be turned into a result. @public */
-export type ComputationErrorCode =
-  | 'TOO_FEW_SAMPLES'
-  | 'RANK_DEFICIENT'
-  | 'NOT_CONVERGED'
-  | 'NO_TIDE';
+export type ComputationErrorCode = 'TOO_FEW_SAMPLES' | 'RANK_DEFICIENT' | 'NO_TIDE';
 
 /** Plain data about an error: what survives `structuredClone`. @public */
 export type ErrorDetails = Readonly<Record<string, unknown>>;
@@ -76,7 +72,7 @@ export class InputError extends RangeError {
 }
 
 /**
- * A sound input does not lead to a result: too few samples, a rank that is not full, no convergence.
+ * A sound input does not lead to a result: too few samples, a rank that is not full, no tide at all.
  *
  * @example
  * new ComputationError('TOO_FEW_SAMPLES', 'expected 75 samples or more, got 20').code; // 'TOO_FEW_SAMPLES'
