@@ -131,6 +131,10 @@ function ofCommander({ code, message }: CommanderError): Failure {
       return make('WRONG_CALL', named, 'expected a file or -, got nothing');
     case 'commander.excessArguments':
       return make('WRONG_CALL', 'arguments', 'expected one file or -, got more');
+    case 'commander.conflictingOption': {
+      const [, other = ''] = /with option '(--[\w-]+)/.exec(message) ?? [];
+      return make('WRONG_CALL', flag, `expected it without ${other}, got both`);
+    }
     default:
       return make('WRONG_CALL', 'call', message.replace(/^error: /, ''));
   }

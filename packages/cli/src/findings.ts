@@ -25,14 +25,14 @@ export function fileRows(record: GaugeRecord): string {
   );
 }
 
-/** `doubt     zero moved +79 ± 4 mm on 2031-09-18 10:30Z; see --steps`. */
-export function doubtRows(findings: RecordCheck['findings'], zone: Zone): string {
+/** `doubt     zero moved +79 ± 4 mm on 2031-09-18 10:30Z; see --steps`: `see` names the option that takes the step. */
+export function doubtRows(findings: RecordCheck['findings'], zone: Zone, see: string): string {
   return findings
     .map((finding) => {
       if (finding.kind === 'zero-moved') {
         const { change, sigma, at } = finding;
         const size = `${signedMillimetres(change)} ± ${millimetres(sigma)} mm`;
-        return row('doubt', `zero moved ${size} on ${momentText(at, zone)}; see --steps`);
+        return row('doubt', `zero moved ${size} on ${momentText(at, zone)}; see ${see}`);
       }
       const { minutes, sigma, from, to } = finding;
       const size = `${Math.abs(minutes).toFixed(0)} ± ${sigma.toFixed(0)} min ${minutes > 0 ? 'late' : 'early'}`;

@@ -96,6 +96,10 @@ describe.concurrent('fit', () => {
     const waters = await run(['predict', '-', '--waters', ...JUNE], fit.out);
     expect(waters.code).toBe(0);
     expect(waters.out).toMatch(/^turning_at_utc,turns_from,height_m\n2031-06-01T/);
+    const both = await run(['predict', '-', '--waters', '--every', '1h', ...JUNE], fit.out);
+    expect(both.code).toBe(2);
+    expect(both.out).toBe('');
+    expect(both.err).toContain('--waters: expected it without --every, got both');
   });
   it('borrows by the rules it is given', async () => {
     const rules = ['--constituents', 'M2,S2,K1,O1', '--borrow', 'K2:S2:0.27:3.5,P1:K1:0.33:-1'];

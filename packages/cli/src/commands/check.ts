@@ -90,7 +90,7 @@ async function run(file: string, options: CheckOptions): Promise<number> {
       'flagged',
       `${counted(bad, 'run')} that ${bad === 1 ? 'fails' : 'fail'}, ${counted(doubtful, 'run')} in doubt`,
     ),
-    doubtRows(findings, zone),
+    doubtRows(findings, zone, 'fit --steps'),
     unseen === undefined ? '' : row('note', `no look for a moved zero: ${unseen}`),
     check.reasons.length === 0 ? '' : `\n${runLines(check.reasons, zone)}`,
   ].join('');

@@ -82,7 +82,7 @@ export function fitRows(
     ),
     ...steps,
     ...fit.warnings.map(({ message }) => row('note', message)),
-    doubtRows(findings, zone),
+    doubtRows(findings, zone, '--steps'),
   ].join('');
 }
 

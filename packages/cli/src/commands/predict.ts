@@ -5,7 +5,7 @@
 import { DAY, formatInstant, MINUTE } from '@staithe/core';
 import { type TideCurve, tideCurve } from '@staithe/predict';
 import { caution, heightsCsv, turningPointsCsv } from '@staithe/report';
-import type { Command } from 'commander';
+import { type Command, Option } from 'commander';
 import { checkOutput, deliver } from '../deliver.js';
 import { inFile } from '../failure.js';
 import { withHelp } from '../help.js';
@@ -104,7 +104,11 @@ export function addPredict(program: Command, settle: (exit: number) => void): vo
       durationOf('--every'),
       10 * MINUTE,
     )
-    .option('--waters', 'high and low waters in place of heights at a step');
+    .addOption(
+      new Option('--waters', 'high and low waters in place of heights at a step').conflicts(
+        'every',
+      ),
+    );
   withOutput(withSpan(command, '7 days'), 'write the CSV to FILE in place of standard output');
   withHelp(command, {
     question: 'how high is the water, and when does it turn?',
