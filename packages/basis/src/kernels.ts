@@ -6,4 +6,12 @@ export type { Basis } from './basis.js';
 export { boundsInto, chargeInto, curveInto } from './kernels/curve.js';
 export { rankUpdate } from './kernels/rank-update.js';
 export { makeStretcher, type Stretch, type Stretcher } from './stretches.js';
-export { columnsInto, gridCount, TILE, type Tile, type TimeGrid, tiles } from './tiles.js';
+export {
+  columnsInto,
+  gridCount,
+  slopeColumnsInto,
+  TILE,
+  type Tile,
+  type TimeGrid,
+  tiles,
+} from './tiles.js';

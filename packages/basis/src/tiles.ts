@@ -4,6 +4,7 @@
  */
 import type { Basis } from './basis.js';
 import { phasorInto } from './kernels/phasor.js';
+import { phasorSlopeInto } from './kernels/phasor-slope.js';
 import { makeStretcher, type Stretch, type Stretcher } from './stretches.js';
 
 /** Times of samples: a uniform grid, or a list of instants in any order. @public */
@@ -123,6 +124,44 @@ export function columnsInto(out: Float64Array, basis: Basis, tile: Tile, pair: F
       offsets,
       n,
       step,
+      pair,
+    );
+  }
+}
+
+/**
+ * Writes the slopes of the columns of a tile, per millisecond: row 2j of the cosine, row 2j + 1 of the sine function.
+ *
+ * @param out - Written to: 2K rows of {@link TILE} numbers.
+ * @param basis - Of `makeBasis`.
+ * @param tile - Of {@link tiles}.
+ * @param pair - Scratch, length 2.
+ * @example
+ * const basis = makeBasis({ constituents: ['S2'], nodalModel: 'none' });
+ * const slopes = new Float64Array(2 * TILE);
+ * for (const tile of tiles(basis, { start: 0, step: 60000, count: 1 }, () => true)) {
+ *   slopeColumnsInto(slopes, basis, tile, new Float64Array(2));
+ * }
+ * Math.round(slopes[TILE] * 43200000 * 1000); // 6283
+ * @public
+ */
+export function slopeColumnsInto(
+  out: Float64Array,
+  basis: Basis,
+  tile: Tile,
+  pair: Float64Array,
+): void {
+  const { stretch, offsets, n } = tile;
+  for (let j = 0; j < basis.speeds.length; j++) {
+    phasorSlopeInto(
+      out.subarray(2 * j * TILE, (2 * j + 1) * TILE),
+      out.subarray((2 * j + 1) * TILE, (2 * j + 2) * TILE),
+      stretch.cubics,
+      8 * j,
+      basis.speeds[j] as number,
+      stretch.to - stretch.from,
+      offsets,
+      n,
       pair,
     );
   }
