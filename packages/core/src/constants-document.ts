@@ -18,7 +18,7 @@ export type Standing = 'firm' | 'faint' | 'borrowed';
 /** One constituent of a place. @public */
 export interface HarmonicConstant {
   readonly name: string;
-  /** H, metres, 0 or more. */
+  /** H, 0 or more, metres; of a current metres per second, and so its errors. */
   readonly amplitude: Metres;
   /** G, the Greenwich phase lag, degrees. */
   readonly phaseLag: Degrees;
@@ -69,6 +69,35 @@ export interface HarmonicConstants {
   readonly validity?:
     | { readonly from?: string | undefined; readonly to?: string | undefined }
     | undefined;
+}
+
+/**
+ * The harmonic constants of a current at a place: two components, each with the signs of a height. What it shares with
+ * heights means the same.
+ * @public
+ */
+export interface CurrentConstants
+  extends Omit<
+    HarmonicConstants,
+    | 'quantity'
+    | 'unit'
+    | 'datum'
+    | 'meanLevel'
+    | 'secularRate'
+    | 'steps'
+    | 'constituents'
+    | 'uncertainty'
+  > {
+  readonly quantity: 'current';
+  readonly unit: 'm/s';
+  /** The current that remains when the tide is taken out, metres per second. */
+  readonly mean: { readonly east: number; readonly north: number };
+  /** The component towards true east; amplitudes and their errors in metres per second. */
+  readonly east: readonly HarmonicConstant[];
+  /** The component towards true north; the names of `east`, in any order. */
+  readonly north: readonly HarmonicConstant[];
+  /** Covariance of the coefficients named in `order` ('east.M2.cos', 'north.M2.sin', 'mean.east' …), m²/s², packed lower triangle. */
+  readonly uncertainty?: HarmonicConstants['uncertainty'];
 }
 
 /** One thing that is wrong with a document. @public */

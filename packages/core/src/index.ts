@@ -11,6 +11,7 @@ export {
 } from './angles.js';
 export type {
   ArgumentModel,
+  CurrentConstants,
   Finding,
   HarmonicConstant,
   HarmonicConstants,

@@ -2,51 +2,60 @@
  * Reads and checks a constants document: every finding with path, expected and got.
  * @module
  */
-import type { Finding, HarmonicConstants } from './constants-document.js';
-import { describe, InputError, type InputErrorCode, isStaitheError, refuse } from './errors.js';
+import type { CurrentConstants, Finding, HarmonicConstants } from './constants-document.js';
+import { describe, InputError, type InputErrorCode, refuse } from './errors.js';
 import { toInstant } from './time.js';
 
 /**
- * What a value must be: `t` text, `i` an instant as text, `n` a number (`n0,90` from 0 to 90), `=a|b` one of these;
- * `[rule]` a list, an object its fields (`!` after a key: required), a function what it picks for the value.
+ * What a value must be: `t` text, `i` an instant as text, `n` a number (`n0` from 0, `n0,90` from 0 to 90), `=a|b (hint)`
+ * one of these, `#a` too, with a code of its own; `[rule]` a list, an object its fields (after a key `$`: required, `?`:
+ * judged even when absent), a function what it picks for the value.
  */
 type Rule = string | readonly [Rule] | Shape | ((value: unknown) => Rule);
 type Shape = { readonly [key: string]: Rule };
 type Add = (path: string, expected: string, got: unknown, code?: InputErrorCode) => void;
 
-const SIZE = 'n0,';
+const SIZE = 'n0';
 const LATITUDE = 'n-90,90';
-const DOCUMENT: Shape = {
-  'format!': '=staithe-constants',
-  'version!': '=1',
-  quantity: '=height',
-  'unit!': '=m',
-  place: { 'name!': 't', latitude: LATITUDE, longitude: 'n-360,360' },
-  datum: 't',
-  'meanLevel!': 'n',
-  secularRate: { 'metresPerYear!': 'n', 'at!': 'i' },
-  steps: [{ 'at!': 'i', 'change!': 'n' }],
-  'argumentModel!': '=iers2010|schureman1940',
-  'nodalModel!': '=potential|schureman1940|none',
+const ROWS: Rule = [
+  {
+    name$: 't',
+    amplitude$: SIZE,
+    phaseLag$: 'n',
+    amplitudeSigma: SIZE,
+    phaseLagSigma: SIZE,
+    radius95: SIZE,
+    standing: '=firm|faint|borrowed',
+    borrowedFrom: 't',
+  },
+];
+const COMMON: Shape = {
+  place: { name$: 't', latitude: LATITUDE, longitude: 'n-360,360' },
+  argumentModel$: '=iers2010|schureman1940',
+  nodalModel$: '=potential|schureman1940|none',
   nodalHold: (value) =>
-    typeof value === 'object' ? { 'heldAt!': 'i' } : '=continuous|calendar-year',
+    typeof value === 'object' ? { heldAt$: 'i' } : '=continuous|calendar-year',
   nodalLatitude: LATITUDE,
-  'constituents!': [
-    {
-      'name!': 't',
-      'amplitude!': SIZE,
-      'phaseLag!': 'n',
-      amplitudeSigma: SIZE,
-      phaseLagSigma: SIZE,
-      radius95: SIZE,
-      standing: '=firm|faint|borrowed',
-      borrowedFrom: 't',
-    },
-  ],
-  uncertainty: { 'order!': ['t'], 'covariance!': ['n'] },
+  uncertainty: { order$: ['t'], covariance$: ['n'] },
   source: 't',
-  record: { 'from!': 'i', 'to!': 'i', 'samples!': SIZE },
+  record: { from$: 'i', to$: 'i', samples$: SIZE },
   validity: { from: 'i', to: 'i' },
+};
+const HEIGHT: Shape = {
+  quantity: "=height (currents: parseConstants(json, 'current'))",
+  unit$: '#m',
+  datum: 't',
+  meanLevel$: 'n',
+  secularRate: { metresPerYear$: 'n', at$: 'i' },
+  steps: [{ at$: 'i', change$: 'n' }],
+  constituents$: ROWS,
+};
+const CURRENT: Shape = {
+  'quantity?': '=current (heights: parseConstants(json))',
+  unit$: '#m/s',
+  mean$: { east$: 'n', north$: 'n' },
+  east$: ROWS,
+  north$: ROWS,
 };
 const DEEPEST = 32;
 
@@ -68,41 +77,32 @@ function copyPlain(value: unknown, path: string, depth: number): unknown {
   return out;
 }
 
-function checkInstant(value: string, path: string, add: Add): void {
-  try {
-    toInstant(value, path);
-  } catch (error) {
-    if (isStaitheError(error))
-      add(path, 'an instant with Z or an offset', value, error.code as InputErrorCode);
-  }
-}
-
 function checkLeaf(rule: string, value: unknown, path: string, add: Add): void {
-  const kind = rule[0];
+  const kind = rule[0] as string;
   const rest = rule.slice(1);
-  if (kind === '=') {
-    const key = (path.split('.').pop() as string).toUpperCase();
-    const code = /^(FORMAT|VERSION|UNIT)$/.test(key) ? `UNKNOWN_${key}` : 'UNKNOWN_CHOICE';
-    const choices = rest.split('|');
-    const type = key === 'VERSION' ? 'number' : 'string';
-    if (typeof value === type && choices.includes(String(value))) return;
-    add(path, choices.join(' or '), value, code as InputErrorCode);
+  if ('=#'.includes(kind)) {
+    const code = kind === '#' ? `UNKNOWN_${path.toUpperCase()}` : 'UNKNOWN_CHOICE';
+    const choices = (rest.split(' (')[0] as string).split('|');
+    // The version is the one number.
+    if (path === 'version' ? value !== Number(rest) : !choices.includes(value as string))
+      add(path, rest.replaceAll('|', ' or '), value, code as InputErrorCode);
   } else if (kind === 'n') {
-    const [low, high] = rest.split(',').map((end) => (end ? Number(end) : undefined));
-    const inside =
-      Number.isFinite(value) &&
-      !((value as number) < (low ?? -Infinity)) &&
-      !((value as number) > (high ?? Infinity));
-    const range = high ? ` from ${low} to ${high}` : low === 0 ? ', 0 or more' : '';
-    if (!inside)
-      add(
-        path,
-        `a finite number${range}`,
-        value,
-        typeof value === 'number' ? 'OUT_OF_RANGE' : undefined,
-      );
+    const [low, high] = rest.split(',').map(parseFloat) as [number, number];
+    const found = value as number;
+    // An end that is not given compares as false.
+    if (!Number.isFinite(value) || found < low || found > high) {
+      const range = high ? ` from ${low} to ${high}` : low === 0 ? ', 0 or more' : '';
+      const code = typeof value === 'number' ? 'OUT_OF_RANGE' : undefined;
+      add(path, `a finite number${range}`, value, code);
+    }
   } else if (typeof value !== 'string' || !value) add(path, 'text', value);
-  else if (kind === 'i') checkInstant(value, path, add);
+  else if (kind === 'i') {
+    try {
+      toInstant(value, path);
+    } catch (error) {
+      add(path, 'an instant with Z or an offset', value, (error as InputError).code);
+    }
+  }
 }
 
 function check(rule: Rule, value: unknown, path: string, add: Add): void {
@@ -112,30 +112,43 @@ function check(rule: Rule, value: unknown, path: string, add: Add): void {
     if (!Array.isArray(value)) return add(path, 'an array', value);
     for (let i = 0; i < value.length; i++) check(rule[0] as Rule, value[i], `${path}[${i}]`, add);
   } else {
-    if (typeof value !== 'object' || !value || Array.isArray(value)) {
+    // The copy holds no other objects than plain ones and arrays.
+    if ((value as object | null | undefined)?.constructor !== Object) {
       return add(path || 'constants', 'an object', value, 'WRONG_TYPE');
     }
     for (const [field, inner] of Object.entries(rule)) {
-      const key = field.replace('!', '');
+      const [key, mark] = field.split(/\b/) as [string, string?];
       const at = path ? `${path}.${key}` : key;
       const found = (value as Record<string, unknown>)[key];
-      if (found !== undefined) check(inner, found, at, add);
-      else if (key !== field) add(at, 'a value', found, 'MISSING');
+      if (found !== undefined || mark === '?') check(inner, found, at, add);
+      else if (mark) add(at, 'a value', found, 'MISSING');
     }
   }
 }
 
-/** What a schema cannot say: one entry a name, and a covariance of the right length. */
-function checkWhole({ constituents, uncertainty }: HarmonicConstants, add: Add): void {
-  const seen = new Set<string>();
-  constituents.forEach(({ name }, i) => {
-    if (seen.has(name)) add(`constituents[${i}].name`, 'each name once', name, 'DUPLICATE');
-    seen.add(name);
+type Whole = Pick<CurrentConstants, 'uncertainty'> & Readonly<Record<string, unknown>>;
+
+/** What a schema cannot say: each name once in a list and in every list, and a covariance of the right length. */
+function checkWhole(document: Whole, lists: readonly string[], add: Add): void {
+  const names = lists.map((list) => {
+    const seen = new Set<string>();
+    (document[list] as CurrentConstants['east']).forEach(({ name }, i) => {
+      if (seen.has(name)) add(`${list}[${i}].name`, 'each name once', name, 'DUPLICATE');
+      seen.add(name);
+    });
+    return seen;
   });
-  const count = uncertainty?.order.length ?? 0;
-  const length = (count * (count + 1)) / 2;
-  if (uncertainty && uncertainty.covariance.length !== length) {
-    add('uncertainty.covariance', `${length} numbers`, uncertainty.covariance, 'LENGTH_MISMATCH');
+  lists.forEach((list, i) => {
+    for (const name of names[1 - i] ?? []) {
+      if (!(names[i] as Set<string>).has(name)) add(list, name, undefined, 'MISSING');
+    }
+  });
+  const { uncertainty } = document;
+  if (!uncertainty) return;
+  const { order, covariance } = uncertainty;
+  const length = (order.length * (order.length + 1)) / 2;
+  if (covariance.length !== length) {
+    add('uncertainty.covariance', `${length} numbers`, covariance, 'LENGTH_MISMATCH');
   }
 }
 
@@ -143,15 +156,35 @@ function checkWhole({ constituents, uncertainty }: HarmonicConstants, add: Add):
  * Reads a constants document. Unknown keys are kept; an unknown version is refused.
  *
  * @param json - What `JSON.parse` gave. It is copied.
+ * @param quantity - What is to be read: heights (default), or `current`. The other is refused, never turned into it.
  * @returns The document.
  * @throws InputError with the code of the first finding (`UNKNOWN_VERSION`, `UNKNOWN_UNIT`, `OUT_OF_RANGE`, `MISSING`,
- *   `DUPLICATE` …, else `INVALID_DOCUMENT`), its path, and all findings in `details.findings`; `UNSAFE_KEY` for `__proto__`.
+ *   `DUPLICATE` …, else `INVALID_DOCUMENT`), its path, and all findings in `details.findings`; `UNKNOWN_CHOICE`, path
+ *   `quantity`, for a document of the other quantity; `UNSAFE_KEY` for `__proto__`.
  * @example
  * parseConstants({ format: 'staithe-constants', version: 1, unit: 'm', meanLevel: 2.1, argumentModel: 'iers2010',
  *   nodalModel: 'potential', constituents: [{ name: 'M2', amplitude: 1.48, phaseLag: 93.1 }] }).meanLevel; // 2.1
  * @public
  */
-export function parseConstants(json: unknown): HarmonicConstants {
+export function parseConstants(json: unknown, quantity?: 'height'): HarmonicConstants;
+/**
+ * Reads a constants document of currents.
+ *
+ * @param json - What `JSON.parse` gave. It is copied.
+ * @param quantity - `current`.
+ * @returns The document, whose lists `east` and `north` hold the same names.
+ * @throws InputError as for heights; `MISSING`, path `east` or `north`, for a name that only the other list has.
+ * @example
+ * parseConstants({ format: 'staithe-constants', version: 1, quantity: 'current', unit: 'm/s', mean: { east: 0.1, north: 0 },
+ *   argumentModel: 'iers2010', nodalModel: 'potential', east: [{ name: 'M2', amplitude: 0.8, phaseLag: 40 }],
+ *   north: [{ name: 'M2', amplitude: 0.3, phaseLag: 75 }] }, 'current').mean.east; // 0.1
+ * @public
+ */
+export function parseConstants(json: unknown, quantity: 'current'): CurrentConstants;
+export function parseConstants(
+  json: unknown,
+  quantity?: 'height' | 'current',
+): HarmonicConstants | CurrentConstants {
   const document = copyPlain(json, '', 0);
   const codes: InputErrorCode[] = [];
   const findings: Finding[] = [];
@@ -159,8 +192,14 @@ export function parseConstants(json: unknown): HarmonicConstants {
     codes.push(code);
     findings.push({ path, expected, got: describe(got) });
   };
-  check(DOCUMENT, document, '', add);
-  if (findings.length === 0) checkWhole(document as HarmonicConstants, add);
+  // Anything but 'current' reads heights, so that list.map(parseConstants), whose second argument is an index, does.
+  const [shape, ...lists] =
+    quantity === 'current'
+      ? ([CURRENT, 'east', 'north'] as const)
+      : ([HEIGHT, 'constituents'] as const);
+  const rule = { format$: '#staithe-constants', version$: '#1', ...shape, ...COMMON };
+  check(rule, document, '', add);
+  if (!findings[0]) checkWhole(document as Whole, lists, add);
   const at = Math.max(0, codes.indexOf('UNKNOWN_VERSION'));
   const first = findings[at];
   if (!first) return document as HarmonicConstants;
