@@ -103,6 +103,19 @@ hourlyVector({
   decimals: 2,
   unit: 'ft',
 });
+hourlyVector({
+  id: 'la-jolla-observed-2010',
+  title: 'La Jolla, verified hourly heights, August to December 2010',
+  source: laJollaFrom('verified hourly heights above MSL (1983-2001), GMT'),
+  retrieved: LA_JOLLA_STATE,
+  tolerance: { abs: 0.005, why: 'printed to 0.01 ft' },
+  cells: dailyLayout(join(laJolla, 'observed_hourly_ft_msl_gmt.csv')),
+  file: join(laJolla, 'observed_hourly_ft_msl_gmt.csv'),
+  from: '2010-08-01T00:00Z',
+  to: '2011-01-01T00:00Z',
+  decimals: 2,
+  unit: 'ft',
+});
 
 const eastport = join(folder, 'noaa-8410140-eastport', 'CO-OPS_8410140_2019_hourly.csv');
 hourlyVector({
@@ -161,6 +174,49 @@ for (const [year, rows] of Object.entries(GRAND_ISLE_FITS)) {
     independentFit: { year: Number(year), rows },
     cells: grandIsleCells,
     file: grandIsle,
+    from: `${year}-01-01T00:00Z`,
+    to: `${Number(year) + 1}-01-01T00:00Z`,
+    decimals: 3,
+    unit: 'm',
+  });
+}
+hourlyVector({
+  id: 'grand-isle-observed',
+  title: 'Grand Isle, verified hourly heights, November 1980 to December 2016',
+  source:
+    'NOAA/NOS/CO-OPS, station 8761724 Grand Isle, verified hourly heights about MHHW (as in force in January 2017), GMT; through the public repository scrim-network/BRICK, data/tideGauge_GrandIsle',
+  retrieved: 'repository commit 72d519d8786a9588721f242f346a101a97ba0fac',
+  tolerance: { abs: 0.0005, why: 'printed to 0.001 m' },
+  cells: grandIsleCells,
+  file: grandIsle,
+  from: '1980-11-12T00:00Z',
+  to: '2017-01-01T00:00Z',
+  decimals: 3,
+  unit: 'm',
+});
+
+const sewells = join(
+  folder,
+  'noaa-8638610-sewells-point-1928-1942',
+  'observed_hourly_m_gmt.csv',
+);
+const sewellsCells = dailyLayout(sewells);
+const SEWELLS_FITS = {
+  1929: { M2: { amplitude: 0.367, phaseLag: 50.1 } },
+  1935: { M2: { amplitude: 0.365, phaseLag: 49.2 }, K1: { amplitude: 0.05, phaseLag: 200.1 } },
+  1940: { M2: { amplitude: 0.36, phaseLag: 49.8 } },
+};
+for (const [year, rows] of Object.entries(SEWELLS_FITS)) {
+  hourlyVector({
+    id: `sewells-point-observed-${year}`,
+    title: `Sewells Point, hourly heights, ${year}`,
+    source:
+      'NOAA/NOS/CO-OPS, station 8638610 Sewells Point, hourly heights above a fixed datum (probably MSL 1983-2001), GMT; through the public repository scrim-network/BRICK, data/tidegauge_SewellsPoint',
+    retrieved: 'repository commit db612b6fb287fb48495574cc47f3f86a71fb615f',
+    tolerance: { abs: 0.0005, why: 'printed to 0.001 m' },
+    independentFit: { year: Number(year), rows },
+    cells: sewellsCells,
+    file: sewells,
     from: `${year}-01-01T00:00Z`,
     to: `${Number(year) + 1}-01-01T00:00Z`,
     decimals: 3,
