@@ -15,12 +15,13 @@ text { font: 11px system-ui, sans-serif; fill: currentColor }
 .dot { fill: #0b6e99 }
 </style>`;
 
-function svg(width: number, height: number, label: string, body: string): string {
+/** A picture with its style. */
+export function svg(width: number, height: number, label: string, body: string): string {
   return `<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 ${width} ${height}" role="img" aria-label="${label}" style="max-width:${width}px;color:#24303a">${STYLE}${body}</svg>`;
 }
 
-const at = (value: number): string => value.toFixed(1);
-const text = (x: number, y: number, words: string, anchor = 'middle'): string =>
+export const at = (value: number): string => value.toFixed(1);
+export const text = (x: number, y: number, words: string, anchor = 'middle'): string =>
   `<text x="${at(x)}" y="${at(y)}" text-anchor="${anchor}">${words}</text>`;
 
 /** The lines of a group: their distance from the main line along x (turns a year), their size upwards (root scale). */
