@@ -73,7 +73,10 @@ const OPTION_NAMES: Readonly<Record<string, string>> = {
   argumentModel: '--argument-model',
   nodalModel: '--nodal-model',
   nodalHold: '--nodal-hold',
+  weighting: '--weighting',
+  resistant: '--weighting',
   errorModel: '--error-model',
+  'redraw.by': '--redraw-by',
   span: '--from and --until',
   place: '--latitude and --longitude',
 };

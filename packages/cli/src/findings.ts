@@ -5,16 +5,18 @@
 import { formatInstant, HOUR, MINUTE } from '@staithe/core';
 import type { GaugeRecord, RecordCheck, Run } from '@staithe/gauge';
 import { momentText, type Zone } from './local-time.js';
-import { sizeOf } from './study.js';
+import { type RecordSize, sizeOf } from './study.js';
 import { counted, millimetres, count, row, signedMillimetres } from './terminal.js';
 
 /** `read      94 210 of 94 896 samples, 686 missing in 14 gaps`. */
-export function readRow(record: GaugeRecord): string {
-  const { due, there, missing, gaps } = sizeOf(record);
+export function sizeRow({ due, there, missing, gaps }: RecordSize, one: string): string {
   const lost =
     missing > 0 || gaps > 0 ? `, ${count(missing)} missing in ${counted(gaps, 'gap')}` : '';
-  return row('read', `${count(there)} of ${counted(due, 'sample')}${lost}`);
+  return row('read', `${count(there)} of ${counted(due, one)}${lost}`);
 }
+
+/** The same of a record of heights. */
+export const readRow = (record: GaugeRecord): string => sizeRow(sizeOf(record), 'sample');
 
 /** What the file gave, and what had to be put right. */
 export function fileRows(record: GaugeRecord): string {

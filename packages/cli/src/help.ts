@@ -53,7 +53,7 @@ export function overview(program: Command): string {
   );
   return [
     'staithe: from a record of water levels to numbers a person can stand behind',
-    '  you have   a gauge record as CSV, or constants.json',
+    '  you have   a record of heights or currents as CSV, or constants.json',
     '  you ask    one of the questions below; - instead of a file reads standard input',
     '  you get    rows for people, --json for programs; exit code 0 done, 1 the data say no, 2 wrong call',
     '  try        staithe fit quenby.csv --place "Quenby Haven" --write quenby.constants.json',

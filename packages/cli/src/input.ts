@@ -9,22 +9,26 @@ import { open } from 'node:fs/promises';
 import { callError, fileError, inFile } from './failure.js';
 import { choiceOf, textOf } from './options.js';
 
-/** How a record is to be read, as options. */
-export interface RecordOptions {
+/** How the times of a record are to be read, as options. */
+export interface TimeOptions {
   readonly timeZone?: string;
-  readonly unit?: 'm' | 'cm' | 'mm' | 'ft';
   readonly dateColumn?: string;
   readonly timeColumn?: string;
-  readonly valueColumn?: string;
   readonly dateOrder?: 'day-first' | 'month-first';
   readonly whenTwice?: 'refuse' | 'first' | 'second' | 'by-order';
   readonly conflict?: 'refuse' | 'first';
   readonly disorder?: 'refuse' | 'sort';
+}
+
+/** How a record of heights is to be read, as options. */
+export interface RecordOptions extends TimeOptions {
+  readonly unit?: 'm' | 'cm' | 'mm' | 'ft';
+  readonly valueColumn?: string;
   readonly datum?: string;
 }
 
-/** Adds the options that say what a record's file does not. */
-export function withRecord(command: Command): Command {
+/** Adds the options that say of times what a record's file does not. */
+export function withTimes(command: Command): Command {
   const add = (flag: string, value: string, choices: readonly string[], text: string): Command =>
     command.option(`${flag} <${value}>`, `${text}: ${choices.join(', ')}`, choiceOf(flag, choices));
   command
@@ -34,10 +38,7 @@ export function withRecord(command: Command): Command {
       textOf('--time-zone'),
     )
     .option('--date-column <NAME>', 'column of dates, where date and time stand apart')
-    .option('--time-column <NAME>', 'column of times')
-    .option('--value-column <NAME>', 'column of heights')
-    .option('--datum <NAME>', "vertical datum of the record's heights", textOf('--datum'));
-  add('--unit', 'UNIT', ['m', 'cm', 'mm', 'ft'], 'unit of the heights, where the file names none');
+    .option('--time-column <NAME>', 'column of times');
   add('--date-order', 'ORDER', ['day-first', 'month-first'], 'how to read dates like 03/04/2012');
   add(
     '--when-twice',
@@ -45,12 +46,25 @@ export function withRecord(command: Command): Command {
     ['refuse', 'first', 'second', 'by-order'],
     'a local time that occurs twice',
   );
-  add('--conflict', 'RULE', ['refuse', 'first'], 'two heights at one time');
+  add('--conflict', 'RULE', ['refuse', 'first'], 'two values at one time');
   return add('--disorder', 'RULE', ['refuse', 'sort'], 'time that goes backwards');
 }
 
+/** Adds the options that say what the file of a record of heights does not. */
+export function withRecord(command: Command): Command {
+  const units = ['m', 'cm', 'mm', 'ft'];
+  return withTimes(command)
+    .option('--value-column <NAME>', 'column of heights')
+    .option(
+      '--unit <UNIT>',
+      `unit of the heights, where the file names none: ${units.join(', ')}`,
+      choiceOf('--unit', units),
+    )
+    .option('--datum <NAME>', "vertical datum of the record's heights", textOf('--datum'));
+}
+
 /** The bytes of a file or of standard input, as they come. */
-async function* bytesOf(path: string): AsyncGenerator<Uint8Array, void, void> {
+export async function* bytesOf(path: string): AsyncGenerator<Uint8Array, void, void> {
   if (path === '-') {
     for await (const piece of process.stdin) yield piece as Uint8Array;
     return;
@@ -71,30 +85,31 @@ async function* bytesOf(path: string): AsyncGenerator<Uint8Array, void, void> {
   }
 }
 
+/** The times of a record, and the column of its values, as the reader takes them. */
+export function readingOf(options: TimeOptions, value: string | undefined): ReadOptions {
+  return {
+    timeZone: options.timeZone,
+    columns: {
+      ...(options.dateColumn === undefined ? {} : { date: options.dateColumn }),
+      ...(options.timeColumn === undefined ? {} : { time: options.timeColumn }),
+      ...(value === undefined ? {} : { value }),
+    },
+    dateOrder: options.dateOrder,
+    whenTwice: options.whenTwice,
+    onConflict: options.conflict,
+    onDisorder: options.disorder,
+  };
+}
+
 /** Reads a gauge record. */
 export function readRecord(
   path: string,
   options: RecordOptions,
   work: LongWork,
 ): Promise<GaugeRecord> {
-  const columns = {
-    ...(options.dateColumn === undefined ? {} : { date: options.dateColumn }),
-    ...(options.timeColumn === undefined ? {} : { time: options.timeColumn }),
-    ...(options.valueColumn === undefined ? {} : { value: options.valueColumn }),
-  };
-  const reading: ReadOptions = {
-    timeZone: options.timeZone,
-    unit: options.unit,
-    columns,
-    dateOrder: options.dateOrder,
-    whenTwice: options.whenTwice,
-    onConflict: options.conflict,
-    onDisorder: options.disorder,
-    datum: options.datum,
-  };
-  return inFile(path, () =>
-    readGaugeCsv(bytesOf(path), { ...reading, onProgress: work.onProgress }),
-  );
+  const { unit, datum, valueColumn } = options;
+  const reading = { ...readingOf(options, valueColumn), unit, datum, onProgress: work.onProgress };
+  return inFile(path, () => readGaugeCsv(bytesOf(path), reading));
 }
 
 /** Reads a constants document, or what `staithe fit --json` printed with one inside. */

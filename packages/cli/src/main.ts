@@ -4,6 +4,8 @@
  */
 import { Command, CommanderError } from 'commander';
 import { addCheck } from './commands/check.js';
+import { addCompare } from './commands/compare.js';
+import { addCurrents } from './commands/currents.js';
 import { addFit } from './commands/fit.js';
 import { addLevels } from './commands/levels.js';
 import { addPredict } from './commands/predict.js';
@@ -24,7 +26,17 @@ function makeProgram(settle: (exit: number) => void): Command {
     .version(ownVersion(), '--version')
     .helpCommand(false)
     .configureHelp({ formatHelp: () => overview(program) });
-  for (const add of [addCheck, addFit, addPredict, addTable, addLevels, addWindows, addReport]) {
+  for (const add of [
+    addCheck,
+    addFit,
+    addCurrents,
+    addPredict,
+    addTable,
+    addLevels,
+    addWindows,
+    addCompare,
+    addReport,
+  ]) {
     add(program, settle);
   }
   return program;

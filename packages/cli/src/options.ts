@@ -33,6 +33,17 @@ export function numberOf(flag: string, low: number, high: number, unit: string) 
   };
 }
 
+/** A whole number within limits, for one option. */
+export function wholeOf(flag: string, low: number, high: number) {
+  const read = numberOf(flag, low, high, 'a whole number');
+  return (text: string): number => {
+    const value = read(text);
+    if (Number.isSafeInteger(value)) return value;
+    const got = describe(text);
+    throw new InputError('OUT_OF_RANGE', flag, `expected a whole number, got ${got}`);
+  };
+}
+
 /** One of some words, for one option. */
 export function choiceOf<T extends string>(flag: string, choices: readonly T[]) {
   return (text: string): T => {

@@ -4,7 +4,7 @@
  * @module
  */
 import { type HarmonicConstants, isStaitheError, type LongWork, type Series } from '@staithe/core';
-import { type FitOptions, fitHarmonicsAsync, type HarmonicFit } from '@staithe/fit';
+import { type FitOptions, fitHarmonicsAsync, type HarmonicFit, type RecordFit } from '@staithe/fit';
 import { applyFlags, checkRecord, type GaugeRecord, type RecordCheck } from '@staithe/gauge';
 import { tideCurve } from '@staithe/predict';
 
@@ -33,7 +33,10 @@ export function expectedBy(constants: HarmonicConstants): (times: Float64Array) 
  * What is wrong with stretches of a record, by the tide fitted to it. Its own tide is no neighbour to judge samples by, so
  * that test is left out.
  */
-export function findingsBy(record: GaugeRecord, fit: HarmonicFit): RecordCheck['findings'] {
+export function findingsBy(
+  record: GaugeRecord,
+  fit: Pick<HarmonicFit, 'constants'>,
+): RecordCheck['findings'] {
   // A step that was fitted belongs to the curve and is no finding any more.
   return checkRecord(record.series, {
     expected: expectedBy(fit.constants),
@@ -46,7 +49,7 @@ export async function tryFit(
   series: Series,
   options: FitOptions,
   work: LongWork,
-): Promise<HarmonicFit | { readonly reason: string }> {
+): Promise<RecordFit | { readonly reason: string }> {
   try {
     return await fitHarmonicsAsync(series, { ...options, onProgress: work.onProgress });
   } catch (error) {
@@ -56,13 +59,15 @@ export async function tryFit(
   }
 }
 
-/** Samples there and due, gaps, and the ends, of a record. */
-export function sizeOf(record: GaugeRecord): {
+/** Samples due, there and missing, and gaps, of a record. */
+export interface RecordSize {
   readonly due: number;
   readonly there: number;
   readonly missing: number;
   readonly gaps: number;
-} {
+}
+
+export function sizeOf(record: GaugeRecord): RecordSize {
   const missing = record.flags.reduce((n, flag) => (flag === 9 ? n + 1 : n), 0);
   const due = record.series.values.length;
   return { due, there: due - missing, missing, gaps: record.reasons.length };

@@ -9,10 +9,18 @@ beforeAll(() => {
   put('empty.json', '');
   put('feet.json', CONSTANTS_JSON.replace('"unit":"m"', '"unit":"ft"'));
   put('empty.csv', '');
+  // Every fiftieth sample comes a minute late.
+  const late = recordCsv().replace(
+    /^(.*?:\d)\d(,)/gm,
+    (line, head: string, tail: string, at: number) => (at % 50 === 0 ? `${head}1${tail}` : line),
+  );
+  put('uneven.csv', late);
   put('nozone.csv', 'time,height_m\n2031-01-01 00:00,1.2\n');
 });
 
-const ASKED = ['check', 'fit', 'predict', 'table', 'levels', 'windows', 'report'];
+const ASKED = [
+  ...['check', 'fit', 'currents', 'predict', 'table', 'levels', 'windows', 'compare', 'report'],
+];
 
 describe.concurrent('help', () => {
   it.each(ASKED)('%s says what you have, ask and get, and one line to try', async (name) => {
@@ -182,6 +190,90 @@ const WRONG: readonly (readonly [readonly string[], number, string, string])[] =
     2,
     'UNKNOWN_CONSTITUENT',
     '--constituents[1]: expected the name of a constituent',
+  ],
+  [
+    ['fit', 'record.csv', '--weighting', 'robust'],
+    2,
+    'UNKNOWN_CHOICE',
+    '--weighting: expected equal or resistant, got "robust"',
+  ],
+  [
+    ['fit', 'record.csv', '--cutoff', '4'],
+    2,
+    'CONFLICT',
+    '--cutoff: expected --weighting resistant beside it, got nothing',
+  ],
+  [
+    ['report', 'record.csv', '--weighting', 'equal', '--curve', 'huber'],
+    2,
+    'CONFLICT',
+    '--curve: expected --weighting resistant beside it, got equal',
+  ],
+  [
+    ['fit', 'record.csv', '--weighting', 'resistant', '--cutoff', '0.1'],
+    2,
+    'OUT_OF_RANGE',
+    '--cutoff: expected scales from 0.5 to 100, got "0.1"',
+  ],
+  [
+    ['fit', 'record.csv', '--weighting', 'resistant', '--curve', 'square'],
+    2,
+    'UNKNOWN_CHOICE',
+    '--curve: expected biweight or huber, got "square"',
+  ],
+  [
+    ['fit', 'record.csv', '--error-model', 'guess'],
+    2,
+    'UNKNOWN_CHOICE',
+    '--error-model: expected residual-spectrum, independent or redrawn, got "guess"',
+  ],
+  [
+    ['fit', 'record.csv', '--draws', '50'],
+    2,
+    'CONFLICT',
+    '--draws: expected --error-model redrawn beside it, got nothing',
+  ],
+  [
+    ['fit', 'record.csv', '--error-model', 'independent', '--seed', '5'],
+    2,
+    'CONFLICT',
+    '--seed: expected --error-model redrawn beside it, got independent',
+  ],
+  [
+    ['fit', 'record.csv', '--redraw-by', 'phases'],
+    2,
+    'CONFLICT',
+    '--redraw-by: expected --error-model redrawn beside it, got nothing',
+  ],
+  [
+    ['fit', 'record.csv', '--error-model', 'redrawn', '--redraw-by', 'hand'],
+    2,
+    'UNKNOWN_CHOICE',
+    '--redraw-by: expected phases or blocks, got "hand"',
+  ],
+  [
+    ['fit', 'record.csv', '--error-model', 'redrawn', '--draws', '19'],
+    2,
+    'OUT_OF_RANGE',
+    '--draws: expected a whole number from 20 to 10000, got "19"',
+  ],
+  [
+    ['fit', 'record.csv', '--error-model', 'redrawn', '--seed', '1.5'],
+    2,
+    'OUT_OF_RANGE',
+    '--seed: expected a whole number, got "1.5"',
+  ],
+  [
+    ['fit', 'record.csv', '--error-model', 'redrawn', '--seed', 'luck'],
+    2,
+    'BAD_NUMBER',
+    '--seed: expected a whole number, got "luck"',
+  ],
+  [
+    ['fit', 'uneven.csv', '--error-model', 'redrawn', '--redraw-by', 'phases'],
+    2,
+    'CONFLICT',
+    '--redraw-by: expected blocks for times of their own, got phases',
   ],
   [['fit', 'record.csv', '--write', '-'], 2, 'WRONG_CALL', '--write: expected the name of a file'],
   [

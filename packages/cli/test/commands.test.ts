@@ -113,6 +113,50 @@ describe.concurrent('fit', () => {
       /held {6}6 lines: 4 firm, 2 borrowed/,
     );
   });
+  const names = ['--constituents', 'M2,S2,K1,O1'];
+  it('weighs what stands out less, and says how many samples', async () => {
+    const resistant = ['--every-sample', '--weighting', 'resistant'];
+    const { code, out } = await run(['fit', record, ...names, ...resistant]);
+    expect(code).toBe(0);
+    expect(out).toMatch(/\ndoubted {3}1 sample of less than half weight, 1 of none\n/);
+    const json = JSON.parse((await run(['fit', record, ...names, ...resistant, '--json'])).out);
+    const { scale, ...told } = json.resistant;
+    expect(told).toEqual({ curve: 'biweight', cutoff: 8, doubted: 1, setAside: 1 });
+    expect(scale).toBeGreaterThan(0);
+    const amplitude = (fit: { constants: { constituents: { amplitude: number }[] } }): number =>
+      (fit.constants.constituents[0] as { amplitude: number }).amplitude;
+    const equal = JSON.parse(
+      (await run(['fit', record, ...names, '--every-sample', '--json'])).out,
+    );
+    expect(equal.resistant).toBeUndefined();
+    // The spike of 1.5 m pulls M2 when all samples weigh alike: by up to 2 · 1.5 m / 4315 samples.
+    const without = JSON.parse((await run(['fit', record, ...names, '--json'])).out);
+    const pull = Math.abs(amplitude(equal) - amplitude(without));
+    expect(pull).toBeGreaterThan(2e-4);
+    expect(Math.abs(amplitude(json) - amplitude(without))).toBeLessThan(pull / 10);
+  });
+  it('takes curve and cutoff, and says where nothing is doubted', async () => {
+    const huber = ['--weighting', 'resistant', '--curve', 'huber', '--cutoff', '50'];
+    const { out } = await run(['fit', record, ...names, ...huber]);
+    expect(out).toMatch(/\ndoubted {3}no sample of less than half weight\n/);
+    const json = JSON.parse((await run(['fit', record, ...names, ...huber, '--json'])).out);
+    expect(json.resistant).toMatchObject({ curve: 'huber', cutoff: 50, doubted: 0 });
+  });
+  it('redraws what is left for the errors, the same for the same seed', async () => {
+    const redrawn = ['--error-model', 'redrawn', '--redraw-by', 'blocks', '--draws', '20'];
+    const call = (seed: string) => run(['fit', record, ...names, ...redrawn, '--seed', seed]);
+    const [one, again, other] = [await call('7'), await call('7'), await call('8')];
+    expect(one.code).toBe(0);
+    expect(again.out).toBe(one.out);
+    const disc = async (more: string[]): Promise<number> => {
+      const { out } = await run(['fit', record, ...names, '--json', ...more]);
+      return JSON.parse(out).constants.constituents[0].radius95;
+    };
+    expect(other.code).toBe(0);
+    expect(await disc([...redrawn, '--seed', '7'])).not.toBe(
+      await disc([...redrawn, '--seed', '8']),
+    );
+  });
   it('says no where the record holds no answer', async () => {
     const short = 'Time (UTC),Level (m)\n2031-01-01 00:00,1.2\n2031-01-01 01:00,1.4\n';
     const { code, err, out } = await run(['fit', '-', '--json'], short);
@@ -206,6 +250,19 @@ describe.concurrent('table, levels, windows', () => {
 });
 
 describe.concurrent('report', () => {
+  it('marks what a resistant fit doubted, and says where errors come from', async () => {
+    const asked = ['--constituents', 'M2,S2,K1,O1', '--every-sample', '--weighting', 'resistant'];
+    const redrawn = ['--error-model', 'redrawn', '--draws', '20'];
+    const { code, out } = await run(['report', record, ...asked, ...redrawn]);
+    expect(code).toBe(0);
+    expect(out).toContain('The fit gave 1 sample less than half weight, 1 of them none.');
+    expect(out).toContain('less than half weight in the fit: 1 sample<');
+    expect(out).toMatch(/>resistant \(biweight\): falling to none at 8 scales of [\d.]+ mm</);
+    expect(out).toContain('the fit repeated on what is not tide, redrawn');
+    const plain = await run(['report', record, '--constituents', 'M2,S2,K1,O1']);
+    expect(plain.out).not.toContain('half weight');
+    expect(plain.out).toContain('the noise beside each line in the spectrum');
+  });
   it('writes one page of the record that answers all questions', async () => {
     const options = [
       '--place',

@@ -1,6 +1,7 @@
 import { existsSync, readFileSync } from 'node:fs';
 import { expect, it } from 'vitest';
 import { useCommand } from './command.js';
+import { currentsCsv, PER_UNIT } from './currents-inputs.js';
 import { recordCsv } from './inputs.js';
 
 const { run, put, path } = useCommand();
@@ -12,9 +13,11 @@ const wordsOf = (call: string): string[] =>
 
 it('shows calls that work, in their order', async () => {
   put('quenby.csv', recordCsv());
+  const heads = ['speed (kn)', 'towards (deg)'] as const;
+  put('sound.csv', currentsCsv({ heads, as: 'directions', perUnit: PER_UNIT.kn }));
   const [, block = ''] = /```\n(staithe check [\s\S]*?)```/.exec(readme) ?? [];
   const lines = block.trimEnd().split('\n');
-  expect(lines).toHaveLength(8);
+  expect(lines).toHaveLength(9);
   for (const line of lines) {
     let last = { code: 0 as number | null, out: '', err: '' };
     for (const call of line.split(' | ')) last = await run(wordsOf(call), last.out);
@@ -22,7 +25,7 @@ it('shows calls that work, in their order', async () => {
     expect(last.code, `${line}\n${last.err}`).toBe(line.includes(' check ') ? 1 : 0);
     expect(last.out).toMatch(/\S/);
   }
-  for (const name of ['quenby.constants.json', 'june.csv', 'quenby.html']) {
+  for (const name of ['quenby.constants.json', 'sound.currents.json', 'june.csv', 'quenby.html']) {
     expect(existsSync(path(name))).toBe(true);
   }
 });

@@ -4,8 +4,8 @@
  */
 import { describe, InputError } from '@staithe/core';
 
-/** What is printed: predicted heights and times, access windows, or levels. @public */
-export type CautionKind = 'heights' | 'windows' | 'levels';
+/** What is printed: predicted heights and times, access windows, levels, or currents. @public */
+export type CautionKind = 'heights' | 'windows' | 'levels' | 'currents';
 
 const TEXTS: Readonly<Record<CautionKind, string>> = {
   heights:
@@ -14,6 +14,8 @@ const TEXTS: Readonly<Record<CautionKind, string>> = {
     'A predicted window leaves out weather, waves, squat and silting and is not for navigation by itself. Official tables, notices and the local authority come first.',
   levels:
     'These levels follow from the data named here. Datums for charting, boundaries or construction are the call of a licensed surveyor or hydrographer.',
+  currents:
+    'A stream is that of this place and depth alone, without wind, waves and river water, and is not for navigation by itself. Official charts, tables, notices and the local authority come first.',
 };
 
 /**
@@ -31,7 +33,7 @@ export function caution(kind: CautionKind): string {
     throw new InputError(
       'UNKNOWN_CHOICE',
       'kind',
-      `expected heights, windows or levels, got ${describe(kind)}`,
+      `expected heights, windows, levels or currents, got ${describe(kind)}`,
     );
   }
   return TEXTS[kind];

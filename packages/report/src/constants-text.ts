@@ -5,25 +5,14 @@
 import type { HarmonicConstants } from '@staithe/core';
 import type { FitDiagnostics } from '@staithe/fit';
 import { max } from 'd3-array';
-import { degrees, millimetres, returnsEvery } from './internal/numbers.js';
+import { bar, sizeText } from './internal/bar.js';
+import { leftOutText } from './internal/left-out.js';
+import { degrees, returnsEvery } from './internal/numbers.js';
 import { groundsOf, groupBySpecies, type Line } from './internal/species.js';
 import { cleanText, padLeft, padRight, wrapText } from './internal/text.js';
 
 const BAR = 12;
-const EIGHTHS = ['', '▏', '▎', '▍', '▌', '▋', '▊', '▉'] as const;
 const WIDTH = 92;
-
-/** A bar in eighths of a character. */
-function bar(share: number): string {
-  const eighths = Math.round(share * BAR * 8);
-  return '█'.repeat(Math.floor(eighths / 8)) + (EIGHTHS[eighths % 8] as string);
-}
-
-/** Whole millimetres; below 10 mm a tenth still says something. */
-const sizeText = (size: number | undefined): string => {
-  if (size === undefined) return '–';
-  return size < 0.00995 ? (size * 1000).toFixed(1) : millimetres(size);
-};
 
 const row = (
   name: string,
@@ -42,7 +31,7 @@ const headText = (title: string): string =>
 function lineText({ own, period }: Line, longest: number): string {
   return row(
     `  ${cleanText(own.name, 12)}`,
-    longest > 0 ? bar(own.amplitude / longest) : '',
+    longest > 0 ? bar(own.amplitude / longest, BAR) : '',
     returnsEvery(period),
     sizeText(own.amplitude),
     degrees(own.phaseLag),
@@ -75,12 +64,7 @@ export function constantsText(
     out.push(i === 0 ? headText(title) : title);
     for (const line of lines) out.push(lineText(line, longest));
   });
-  const left = (diagnostics?.candidates ?? []).filter(({ decision }) => decision === 'left');
-  if (left.length > 0) {
-    const list = left
-      .map(({ name, reason }) => `${cleanText(name, 12)} (${cleanText(reason)})`)
-      .join(', ');
-    out.push(...wrapText(`Left out: ${list}`, WIDTH));
-  }
+  const left = leftOutText(diagnostics);
+  if (left !== undefined) out.push(...wrapText(`Left out: ${left}`, WIDTH));
   return out.join('\n');
 }

@@ -1,8 +1,6 @@
 /**
  * CSV for programs: headers name quantity and unit, numbers have an ASCII minus, instants are UTC. No comment lines: place,
  * datum and models belong in metadata beside the file.
- *
- * Source of the form: RFC 4180 (quotes), with `\n` between lines.
  * @module
  */
 import {
@@ -15,18 +13,9 @@ import {
   seriesTimes,
 } from '@staithe/core';
 import type { TideWindow, TurningPoint } from '@staithe/predict';
+import { csvLines, numberCell } from './internal/cells.js';
 import { groundsOf, groupBySpecies } from './internal/species.js';
 import { cleanText } from './internal/text.js';
-
-const quoted = (cell: string): string =>
-  /[",\n\r]/.test(cell) ? `"${cell.replaceAll('"', '""')}"` : cell;
-const lines = (rows: readonly (readonly string[])[]): string =>
-  `${rows.map((cells) => cells.map(quoted).join(',')).join('\n')}\n`;
-/** A missing value is an empty cell; minus zero is zero. */
-const number = (value: number | undefined, decimals: number): string =>
-  value === undefined || Number.isNaN(value)
-    ? ''
-    : (Number(value.toFixed(decimals)) + 0).toFixed(decimals);
 
 /**
  * The constants as CSV, grouped by species, largest first.
@@ -42,14 +31,14 @@ export function constantsCsv(constants: HarmonicConstants): string {
   const rows = groupBySpecies(constants).flatMap((group) =>
     group.lines.map(({ own, period }) => [
       cleanText(own.name),
-      number(period, 7),
-      number(own.amplitude, 6),
-      number(own.phaseLag, 4),
-      number(own.radius95, 6),
+      numberCell(period, 7),
+      numberCell(own.amplitude, 6),
+      numberCell(own.phaseLag, 4),
+      numberCell(own.radius95, 6),
       cleanText(groundsOf(own)),
     ]),
   );
-  return lines([['line', 'returns_every_h', 'H_m', 'G_deg', 'disc95_m', 'grounds'], ...rows]);
+  return csvLines([['line', 'returns_every_h', 'H_m', 'G_deg', 'disc95_m', 'grounds'], ...rows]);
 }
 
 /** The 95 % band of heights, metres; as long as the series. @public */
@@ -84,11 +73,11 @@ export function heightsCsv(series: Series, band?: HeightBand): string {
   ];
   const times = seriesTimes(series);
   for (let i = 0; i < values.length; i++) {
-    const row = [formatInstant(times[i] as number), number(values[i], 4)];
-    if (band) row.push(number(band.low[i], 4), number(band.high[i], 4));
+    const row = [formatInstant(times[i] as number), numberCell(values[i], 4)];
+    if (band) row.push(numberCell(band.low[i], 4), numberCell(band.high[i], 4));
     rows.push(row);
   }
-  return lines(rows);
+  return csvLines(rows);
 }
 
 /**
@@ -117,8 +106,8 @@ export function turningPointsCsv(
   const rows = turningPoints.map(({ kind, time, height }, i) => [
     formatInstant(time),
     kind === 'high' ? 'rising' : 'falling',
-    number(height, 4),
-    ...(atSigma === undefined ? [] : [number((atSigma[i] as number) / 1000, 1)]),
+    numberCell(height, 4),
+    ...(atSigma === undefined ? [] : [numberCell((atSigma[i] as number) / 1000, 1)]),
   ]);
   const head = [
     'turning_at_utc',
@@ -126,7 +115,7 @@ export function turningPointsCsv(
     'height_m',
     ...(atSigma === undefined ? [] : ['at_sigma_s']),
   ];
-  return lines([head, ...rows]);
+  return csvLines([head, ...rows]);
 }
 
 /**
@@ -142,11 +131,11 @@ export function windowsCsv(windows: readonly TideWindow[]): string {
   const rows = windows.map(({ from, to, openStart, openEnd }) => [
     formatInstant(from),
     formatInstant(to),
-    number((to - from) / MINUTE, 1),
+    numberCell((to - from) / MINUTE, 1),
     String(openStart),
     String(openEnd),
   ]);
-  return lines([
+  return csvLines([
     ['opens_at_utc', 'closes_at_utc', 'open_min', 'cut_at_start', 'cut_at_end'],
     ...rows,
   ]);

@@ -2,23 +2,33 @@
  * Dials: one for each species, each constituent an arrow of length H at angle G.
  * @module
  */
-import { degreesToRadians, type HarmonicConstants } from '@staithe/core';
-import { max, median } from 'd3-array';
+import { degreesToRadians, type HarmonicConstant, type HarmonicConstants } from '@staithe/core';
+import { median } from 'd3-array';
 import { format } from 'd3-format';
 import { scaleLinear } from 'd3-scale';
-import { arc, symbol, symbolTriangle } from 'd3-shape';
+import { symbol, symbolTriangle } from 'd3-shape';
 import { type Child, element } from './internal/markup.js';
+import {
+  cellsOf,
+  type DrawnPanel,
+  drawName,
+  framed,
+  inRows,
+  type Panel,
+  panelsOf,
+  placeNames,
+  plate,
+  rimMarks,
+} from './internal/panels.js';
 import {
   headHeight,
   type Picture,
   type PictureOptions,
   readOptions,
   standalone,
-  textWidth,
   wrapNote,
 } from './internal/picture.js';
 import { groupBySpecies, type Line } from './internal/species.js';
-import { spread } from './internal/spread.js';
 import { cleanText } from './internal/text.js';
 
 /** Options of the dials. @public */
@@ -27,31 +37,8 @@ export interface DialsOptions extends PictureOptions {
   readonly title?: string | undefined;
 }
 
-interface Dial {
-  readonly words: string;
-  readonly lines: readonly Line[];
-  /** Metres at the rim. */
-  readonly rim: number;
-}
-
-const SMALL = 0.15; // of the rim: shorter arrows get a dial of their own, drawn larger
 const MOST_NAMES = 9;
-
-/** The dials of a document: one a species, and one more where the small arrows would not be seen. */
-function dialsOf(constants: HarmonicConstants): Dial[] {
-  const dials: Dial[] = [];
-  for (const { words, lines } of groupBySpecies(constants)) {
-    const longest = max(lines, ({ own }) => own.amplitude) as number;
-    if (longest === 0) continue;
-    const small = lines.filter(({ own }) => own.amplitude < SMALL * longest);
-    // Small ones that are nothing but noise are not worth a dial.
-    const split = lines.length > 3 && small.length > 1 && !small.every(isFaint);
-    const large = split ? lines.filter((line) => !small.includes(line)) : lines;
-    dials.push({ words, lines: large, rim: rimOf(large) });
-    if (split) dials.push({ words: `${words}, the small ones`, lines: small, rim: rimOf(small) });
-  }
-  return dials;
-}
+const CELL = 240; // pixels
 
 const isFaint = ({ own }: Line): boolean => own.standing === 'faint';
 
@@ -109,99 +96,26 @@ function arrow(line: Line, scale: (metres: number) => number): Child {
   ];
 }
 
-interface Name {
-  readonly text: string;
-  readonly tip: readonly [number, number];
-  readonly x: number;
-  readonly y: number;
-  readonly leader: boolean;
-}
-
-const CROWD = 4; // names on one side that still fit at their tips
-
-/** Where names stand: at the tips, or, where a side is crowded, in a column outside the rim. */
-function placeNames(
-  lines: readonly Line[],
-  scale: (metres: number) => number,
-  radius: number,
-): Name[] {
-  const tips = lines.map((line) => ({ text: cleanText(line.own.name, 12), tip: tip(line, scale) }));
-  return [-1, 1].flatMap((side) => {
-    const here = tips.filter(({ tip: [x] }) => (side < 0 ? x < 0 : x >= 0));
-    here.sort((a, b) => a.tip[1] - b.tip[1]);
-    const wanted = here.map(({ tip: [, y] }) => y + (y < 0 ? -5 : 6));
-    const moved = spread(wanted, 13, -radius - 6, radius + 8);
-    const near = here.map(
-      (name, i): Name => ({
-        ...name,
-        x: side * (Math.abs(name.tip[0]) + 7),
-        y: moved[i] as number,
-        leader: false,
-      }),
-    );
-    const crowded =
-      here.length > CROWD ||
-      moved.some((y, i) => Math.abs(y - (wanted[i] as number)) > 9) ||
-      near.some((name) => near.some((other) => other !== name && crossed(name, other.tip)));
-    if (!crowded) return near;
-    return near.map((name) => ({ ...name, x: side * (radius + 8), leader: true }));
-  });
-}
-
-/** Whether the arrow to a tip passes under a name. */
-function crossed({ text, x, y }: Name, [tipX, tipY]: Name['tip']): boolean {
-  const [from, to] = x < 0 ? [x - textWidth(text), x] : [x, x + textWidth(text)];
-  return [0.25, 0.4, 0.55, 0.7, 0.85, 1].some(
-    (k) => k * tipX > from && k * tipX < to && Math.abs(k * tipY - y) < 4,
-  );
-}
-
-function drawName({ text, tip: [tipX, tipY], x, y, leader }: Name): Child {
-  const side = x < 0 ? -1 : 1;
-  const place = { x, y: y + 4, 'text-anchor': side < 0 ? 'end' : 'start' };
-  return [
-    leader &&
-      element('line', {
-        class: 'line-muted',
-        'stroke-width': 0.6,
-        x1: tipX,
-        y1: tipY,
-        x2: x - 3 * side,
-        y2: y,
-      }),
-    element('text', { class: 'ink strong halo', ...place }, text),
-  ];
-}
-
-/** 0° at the top and so on clockwise, where no name stands. */
-function angleMarks(radius: number, placed: readonly Name[]): Child {
-  const marks = [
-    [0, 0, -radius - 7, 'middle'],
-    [90, radius + 6, 4, 'start'],
-    [180, 0, radius + 15, 'middle'],
-    [270, -radius - 6, 4, 'end'],
-  ] as const;
-  return marks
-    .filter(
-      ([, x, y]) => !placed.some((name) => Math.abs(name.y - y) < 15 && Math.abs(name.x - x) < 44),
-    )
-    .map(([angle, x, y, anchor]) =>
-      element('text', { class: 'muted tiny', x, y, 'text-anchor': anchor }, `${angle}°`),
-    );
-}
-
-function drawDial(dial: Dial, cell: number, radius: number): { body: Child; height: number } {
-  const scale = scaleLinear().domain([0, dial.rim]).range([0, radius]);
-  const discs = dial.lines.flatMap(({ own }) =>
+function drawDial(
+  { words, lines }: Panel<HarmonicConstant>,
+  size: { readonly cell: number; readonly radius: number },
+): DrawnPanel {
+  const { radius } = size;
+  const rim = rimOf(lines);
+  const scale = scaleLinear().domain([0, rim]).range([0, radius]);
+  const discs = lines.flatMap(({ own }) =>
     own.standing !== 'borrowed' && own.radius95 !== undefined ? [own.radius95] : [],
   );
   const noise = median(discs);
-  const rings = scale.ticks(3).filter((tick) => tick > 0 && tick <= dial.rim);
-  const firm = dial.lines.filter((line) => !isFaint(line));
-  const named = (firm.length > 0 ? firm : dial.lines).slice(0, MOST_NAMES);
-  const unnamed = dial.lines.filter((line) => !named.includes(line));
-  const placed = placeNames(named, scale, radius);
-  const ring = `${format('~g')((rings[0] ?? dial.rim) * 1000)} mm`;
+  const rings = scale.ticks(3).filter((tick) => tick > 0 && tick <= rim);
+  const firm = lines.filter((line) => !isFaint(line));
+  const named = (firm.length > 0 ? firm : lines).slice(0, MOST_NAMES);
+  const unnamed = lines.filter((line) => !named.includes(line));
+  const placed = placeNames(
+    named.map((line) => ({ text: cleanText(line.own.name, 12), tip: tip(line, scale) })),
+    radius,
+  );
+  const ring = `${format('~g')((rings[0] ?? rim) * 1000)} mm`;
   const facts = [rings.length > 1 ? `rings every ${ring}` : `ring ${ring}`];
   if (noise !== undefined && scale(noise) > 0)
     facts.push(`noise ends at ${(noise * 1000).toFixed(1)} mm`);
@@ -212,66 +126,34 @@ function drawDial(dial: Dial, cell: number, radius: number): { body: Child; heig
     if (list.length === 0) continue;
     facts.push(`${word}: ${list.map(({ own }) => cleanText(own.name, 12)).join(', ')}`);
   }
-  const below = facts.flatMap((fact) => wrapNote(fact, cell - 8));
-  const axis = arc<undefined>()
-    .innerRadius(0)
-    .outerRadius(radius)
-    .startAngle(0)
-    .endAngle(2 * Math.PI)
-    .digits(1)(undefined);
-  const body = element(
-    'g',
-    { transform: `translate(${(cell / 2).toFixed(1)} ${radius + 44})` },
-    element(
-      'text',
-      { class: 'ink strong', x: 0, y: -radius - 28, 'text-anchor': 'middle' },
-      dial.words,
-    ),
-    element('path', { class: 'shallow', d: axis ?? undefined, 'fill-opacity': 0.35 }),
-    rings.map((ring) => element('circle', { class: 'line-grid', r: scale(ring) })),
-    element('line', { class: 'line-grid', x1: -radius, x2: radius, y1: 0, y2: 0 }),
-    element('line', { class: 'line-grid', x1: 0, x2: 0, y1: -radius, y2: radius }),
-    angleMarks(radius, placed),
+  const drawing = [
+    plate(radius, rings.map(scale)),
+    rimMarks(radius, placed, ['0°', '90°', '180°', '270°']),
     noise !== undefined &&
       scale(noise) > 1 &&
       scale(noise) < radius + 20 &&
       element('circle', { class: 'line-reject dashed', r: scale(noise) }),
-    dial.lines.map((line) => disc(line, scale, radius)),
-    [...dial.lines].reverse().map((line) => arrow(line, scale)),
+    lines.map((line) => disc(line, scale, radius)),
+    [...lines].reverse().map((line) => arrow(line, scale)),
     placed.map(drawName),
-    below.map((text, i) =>
-      element(
-        'text',
-        { class: 'muted small', x: 0, y: radius + 32 + 14 * i, 'text-anchor': 'middle' },
-        text,
-      ),
-    ),
-  );
-  return { body, height: 2 * radius + 44 + 32 + 14 * below.length };
+  ];
+  return framed(words, drawing, facts, size);
 }
 
 /** The picture without its frame. */
 export function drawDials(constants: HarmonicConstants, options: DialsOptions): Picture {
   const { width, theme } = readOptions(options);
-  const dials = dialsOf(constants);
+  const dials = panelsOf(groupBySpecies(constants), ({ own }) => own.amplitude, isFaint);
   const place = constants.place ? ` of ${cleanText(constants.place.name, 60)}` : '';
   const title = cleanText(options.title ?? `The constants${place}`);
   const note = wrapNote(
     'length H, angle G clockwise from the top; disc: 95 % of the error; dashed: borrowed; grey: faint; ring: noise',
     width - 16,
   );
-  const columns = Math.min(Math.max(1, Math.floor(width / 240)), Math.max(1, dials.length));
-  const cell = width / columns;
-  const radius = Math.min(86, cell / 2 - 50);
-  const body: Child[] = [];
-  let y = headHeight(note) + 6;
-  for (let i = 0; i < dials.length; i += columns) {
-    const drawn = dials.slice(i, i + columns).map((dial) => drawDial(dial, cell, radius));
-    drawn.forEach((dial, k) => {
-      body.push(element('g', { transform: `translate(${(k * cell).toFixed(1)} ${y})` }, dial.body));
-    });
-    y += max(drawn, ({ height }) => height) as number;
-  }
+  const cells = cellsOf(width, dials.length, CELL);
+  const radius = Math.min(86, cells.cell / 2 - 50);
+  const drawn = dials.map((dial) => drawDial(dial, { ...cells, radius }));
+  const { body, bottom: y } = inRows(drawn, cells, headHeight(note) + 6);
   if (dials.length === 0)
     body.push(
       element('text', { class: 'muted', x: 8, y: y + 14 }, 'No constituent has an amplitude.'),

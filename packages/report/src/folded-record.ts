@@ -7,9 +7,17 @@ import { extent } from 'd3-array';
 import { scaleLinear } from 'd3-scale';
 import { line } from 'd3-shape';
 import { utcDay } from 'd3-time';
-import { captions, FLAG_WORDS, marginNames, type Row, thinned } from './internal/folds.js';
+import {
+  captions,
+  doubted,
+  FLAG_WORDS,
+  HALF,
+  marginNames,
+  type Row,
+  thinned,
+} from './internal/folds.js';
 import { type Child, element } from './internal/markup.js';
-import { metres, signedMillimetres } from './internal/numbers.js';
+import { counted, metres, signedMillimetres } from './internal/numbers.js';
 import {
   headHeight,
   type Picture,
@@ -29,6 +37,8 @@ export interface FoldedRecordInput {
   /** Gaps that are not among the runs (flag 9). */
   readonly gaps?: readonly RecordGap[] | undefined;
   readonly steps?: readonly ZeroStep[] | undefined;
+  /** Of a resistant fit, one a sample of the series: those of less than half weight are marked. */
+  readonly weights?: ArrayLike<number> | undefined;
   readonly title: string;
 }
 
@@ -40,7 +50,14 @@ export interface FoldedRecordOptions extends PictureOptions {
 
 const FORTNIGHT = 14 * DAY;
 const MOST_ROWS = 30; // thirteen months fit, and so does a sheet of A4
+const RING = 2.6; // pixels: the mark of a doubted sample
 const SHADES: Readonly<Record<number, string>> = { 3: 'doubtful', 4: 'rejected', 9: 'blank' };
+
+function readWeights({ weights }: FoldedRecordInput, count: number): ArrayLike<number> {
+  if (weights === undefined || weights.length === count) return weights ?? [];
+  const text = `expected ${count}, one a sample, got ${describe(weights.length)}`;
+  throw new InputError('LENGTH_MISMATCH', 'weights', text);
+}
 
 /** The picture without its frame. */
 export function drawFoldedRecord(input: FoldedRecordInput, options: FoldedRecordOptions): Picture {
@@ -48,6 +65,7 @@ export function drawFoldedRecord(input: FoldedRecordInput, options: FoldedRecord
   const title = requiredText(input.title, 'title');
   const samples = readSamples(input.series);
   const { step } = samples;
+  const weights = readWeights(input, samples.times.length);
   const runs = [
     ...input.runs.filter(({ flag }) => flag in SHADES),
     ...(input.gaps ?? []).map(
@@ -128,6 +146,9 @@ export function drawFoldedRecord(input: FoldedRecordInput, options: FoldedRecord
       .y(([, value]) => y(value))
       .digits(1)(thinned(samples, first, row, Math.round(plot)));
     if (path) body.push(element('path', { class: 'line-water', 'stroke-width': 0.8, d: path }));
+    for (const [t, value] of doubted(samples, weights, first, row, plot / RING)) {
+      body.push(element('circle', { class: 'line-reject', cx: x(t), cy: y(value), r: RING }));
+    }
     for (const { at, change } of input.steps ?? []) {
       if (at < row.from || at >= row.to) continue;
       const text = `zero ${signedMillimetres(change)} mm`;
@@ -174,7 +195,26 @@ export function drawFoldedRecord(input: FoldedRecordInput, options: FoldedRecord
     ),
     legendKey(left + 62, legend, narrow),
   );
-  return { width, height: legend + Math.max(12, long / 2 + 4), title, note: notes, theme, body };
+  let bottom = legend + Math.max(12, long / 2 + 4);
+  if (input.weights !== undefined) {
+    const below = Array.from(weights).filter((weight) => weight < HALF).length;
+    const y = narrow ? bottom + 8 : legend;
+    body.push(weightKey(narrow ? left + 62 : left + 350, y, below));
+    bottom = Math.max(bottom, y + 12);
+  }
+  return { width, height: bottom, title, note: notes, theme, body };
+}
+
+/** What the circles mean, and how many samples have one, those beside each other counted each. */
+function weightKey(x: number, y: number, below: number): Child {
+  return [
+    element('circle', { class: 'line-reject', cx: x + 7, cy: y - 4, r: RING }),
+    element(
+      'text',
+      { class: 'ink small', x: x + 19, y },
+      `less than half weight in the fit: ${counted(below, 'sample')}`,
+    ),
+  ];
 }
 
 /** A round height for the scale bar, about half of what there is. */
@@ -201,13 +241,13 @@ function legendKey(x: number, y: number, narrow: boolean): Child {
 
 /**
  * Draws the record folded in rows of a fortnight: a thin curve a row, flagged runs shaded and named in the margin, steps of
- * the zero as dotted verticals with their size. Days are UTC.
+ * the zero as dotted verticals with their size, samples that a resistant fit gave less than half weight as circles. Days are UTC.
  *
- * @param input - The series in metres, its flagged runs, gaps, steps and a title. Nothing is written to.
+ * @param input - The series in metres, its flagged runs, gaps, steps, weights and a title. Nothing is written to.
  * @param options - Width in pixels, theme, where to begin.
  * @returns SVG.
  * @throws InputError `MISSING` or `WRONG_TYPE` path `title`, `OUT_OF_RANGE` paths `options.width`, `options.from`, `UNKNOWN_CHOICE` path
- * `options.theme`; ComputationError `TOO_FEW_SAMPLES` under two samples.
+ * `options.theme`, `LENGTH_MISMATCH` path `weights`; ComputationError `TOO_FEW_SAMPLES` under two samples.
  * @example
  * const series = uniformSeries({ start: '2031-06-01T00:00Z', step: HOUR, values: [1, 2, 3, 2] });
  * foldedRecordSvg({ series, runs: [], title: 'Quenby Haven' }).includes('1 Jun 2031'); // true

@@ -3,14 +3,19 @@
  * @packageDocumentation
  */
 export { caution, type CautionKind } from './caution.js';
+export { comparisonCsv } from './comparison-csv.js';
+export { comparisonText } from './comparison-text.js';
 export { constantsText } from './constants-text.js';
 export { constantsCsv, type HeightBand, heightsCsv, turningPointsCsv, windowsCsv } from './csv.js';
+export { currentsText } from './currents-text.js';
 export { type DialsOptions, dialsSvg } from './dials.js';
+export { type EllipsesOptions, ellipsesSvg } from './ellipses.js';
 export {
   type FoldedRecordInput,
   type FoldedRecordOptions,
   foldedRecordSvg,
 } from './folded-record.js';
+export type { ShownCurrents, ShownEllipse } from './internal/currents.js';
 export type { MonthInput } from './internal/month.js';
 export type { PictureOptions } from './internal/picture.js';
 export type {

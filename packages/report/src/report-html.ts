@@ -50,7 +50,7 @@ function headLine({ input, datum, zone }: Facts): string {
  * @param input - Place, datum, zone, constants and what else there is. Nothing is written to.
  * @returns HTML, complete from `<!doctype html>`.
  * @throws InputError of `parseConstants`, `constituent`, and of the pictures: `MISSING` paths `place.name`, `datum`,
- * `UNKNOWN_CHOICE` path `timeZone`, `BAD_TIME` path `month`.
+ * `UNKNOWN_CHOICE` path `timeZone`, `BAD_TIME` path `month`, `LENGTH_MISMATCH` path `weights` (of `fit.resistant`).
  * @example
  * const input = { place: { name: 'Quenby Haven' }, datum: 'chart datum', timeZone: 'UTC', fit: { constants }, turningPoints: [], generatedFrom: { program: 'a test' } };
  * reportHtml(input).includes('<h2 id="question-7">'); // true

@@ -4,7 +4,9 @@ import { describe, expect, test } from 'vitest';
 import {
   constantsCsv,
   constantsText,
+  currentsText,
   dialsSvg,
+  ellipsesSvg,
   foldedRecordSvg,
   levelsLadderSvg,
   levelsText,
@@ -59,12 +61,25 @@ const report: ReportInput = {
   generatedFrom: { program: HOSTILE, file: HOSTILE, sha256: HOSTILE },
 };
 
+const currents = {
+  constants: { mean: { east: 0.1, north: 0.2 }, place: { name: HOSTILE } },
+  ellipses: [
+    {
+      ...{ name: 'M2', major: 1, minor: 0.1, turning: 'left' as const, bearing: 20, phaseLag: 30 },
+      ...{ standing: 'borrowed' as const, borrowedFrom: HOSTILE },
+    },
+  ],
+  diagnostics: { candidates },
+};
+
 const MARKUP: Record<string, () => string> = {
   foldedRecordSvg: () => foldedRecordSvg({ series, runs: [run], title: HOSTILE }),
   foldedRecordSvgNarrow: () =>
     foldedRecordSvg({ series, runs: [run], title: HOSTILE }, { width: 360 }),
   dialsSvg: () => dialsSvg(constants, { title: HOSTILE }),
   dialsSvgOfPlace: () => dialsSvg(constants),
+  ellipsesSvg: () => ellipsesSvg(currents, { title: HOSTILE }),
+  ellipsesSvgOfPlace: () => ellipsesSvg(currents),
   residualRasterSvg: () => residualRasterSvg({ residuals: series, leftOver, title: HOSTILE }),
   weekSvg: () =>
     weekSvg({
@@ -82,6 +97,7 @@ const MARKUP: Record<string, () => string> = {
 const TEXT: Record<string, () => string> = {
   constantsText: () => constantsText(constants, { candidates }),
   constantsCsv: () => constantsCsv(constants),
+  currentsText: () => currentsText(currents),
   monthText: () => monthText({ ...month, sky }),
   levelsText: () => levelsText({ rungs, datum: HOSTILE }),
   windowsText: () =>

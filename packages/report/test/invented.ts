@@ -206,6 +206,7 @@ const diagnosticsOf = (count: number): FitDiagnostics => ({
   unknowns: 54,
   rank: 54,
   condition: 3.7,
+  solver: 'cholesky',
   residual: { rms: 0.081, largest: 0.402, largestAt: Date.UTC(2030, 1, 3, 4, 10) },
   noise: [{ name: 'meanLevel', sigma: 0.9, bins: 24 }],
   effectiveSamples: 310,

@@ -272,6 +272,35 @@ describe('foldedRecordSvg', () => {
     expect(bar(true)).toBe('1 m');
     expect(bar(false)).toBe('500 m');
   });
+  test('samples of less than half weight have circles, and the legend counts them', () => {
+    const at = Date.UTC(2030, 0, 9);
+    const values = Array.from({ length: 336 }, (_, i) => Math.sin(i / 2));
+    const series = uniformSeries({ start: at, step: HOUR, values });
+    const weights = new Float64Array(336).fill(1);
+    weights.set([0.49, 0, 0.5, Number.NaN], 90);
+    weights[200] = 0.2;
+    for (const [width, left, plot] of [
+      [774, 84, 774 - 84 - 212],
+      [360, 8, 360 - 16],
+    ] as const) {
+      const root = parse(foldedRecordSvg({ series, runs: [], weights, title: 'a' }, { width }));
+      const circles = withClass(all(root, 'circle'), 'line-reject');
+      // Two samples side by side have one circle, at the one of less weight; one more explains them.
+      expect(circles).toHaveLength(3);
+      expectNear(number(circles[0], 'cx'), left + (91 / 336) * plot, TENTH);
+      expectNear(number(circles[1], 'cx'), left + (200 / 336) * plot, TENTH);
+      expect(texts(root)).toContain('less than half weight in the fit: 3 samples');
+      expect(number(circles[2], 'cy')).toBeLessThan(number(root, 'height'));
+    }
+    const none = parse(foldedRecordSvg({ series, runs: [], title: 'a' }));
+    expect(all(none, 'circle')).toEqual([]);
+    expect(texts(none).join(' ')).not.toContain('weight');
+  });
+  test('weights of another length are refused', () => {
+    expect(() => foldedRecordSvg({ ...input, weights: [1, 1] })).toThrow(
+      expect.objectContaining({ code: 'LENGTH_MISMATCH', path: 'weights' }),
+    );
+  });
   test('a begin after the end of the record is refused', () => {
     const from = Date.UTC(2040, 0, 1);
     expect(() => foldedRecordSvg(input, { from })).toThrow(

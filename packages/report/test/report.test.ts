@@ -65,6 +65,59 @@ test('the caution stands under 1, 5 and 6', () => {
   ]);
 });
 
+describe('a resistant fit', () => {
+  const weights = new Float64Array(record.series.values.length).fill(1);
+  weights.set([0.2, 0], 480);
+  const resistant = {
+    ...{ curve: 'biweight' as const, cutoff: 8, scale: 0.0213 },
+    ...{ weights, doubted: 2, setAside: 1 },
+  };
+  const pageOf = (more: Partial<ReportInput['fit']>): Node =>
+    parse(reportHtml({ ...full, fit: { ...full.fit, ...more } }));
+  const page = pageOf({ resistant, errorModel: 'redrawn' });
+  const answer = (node: Node, question: number): string =>
+    (all(node, 'section')[question - 1] as Node).text;
+
+  test('says what it doubted, marks it, and where the weights come from', () => {
+    expect(answer(page, 2)).toContain(
+      'The fit gave 2 samples less than half weight, 1 of them none.',
+    );
+    for (const picture of all(all(page, 'section')[1] as Node, 'svg')) {
+      expect(picture.text).toContain('less than half weight in the fit: 2 samples');
+      expect(withClass(all(picture, 'circle'), 'line-reject').length).toBeGreaterThan(1);
+    }
+    expect(answer(page, 7)).toContain(
+      'resistant (biweight): falling to none at 8 scales of 21.3 mm',
+    );
+    expect(answer(page, 7)).toContain('the fit repeated on what is not tide, redrawn');
+  });
+  test('that doubted nothing says so; huber falls beyond its cutoff', () => {
+    const calm = { ...resistant, curve: 'huber' as const, cutoff: 1.345, doubted: 0, setAside: 0 };
+    const other = pageOf({ resistant: { ...calm, weights: weights.map(() => 1) } });
+    expect(answer(other, 2)).toContain('The fit gave no sample less than half weight.');
+    expect(answer(other, 7)).toContain('resistant (huber): falling beyond 1.345 scales');
+  });
+  test('is not spoken of where all samples weigh alike', () => {
+    for (const question of [2, 7]) expect(answer(root, question)).not.toContain('weight');
+    expect(answer(root, 7)).toContain('the noise beside each line in the spectrum');
+  });
+  test('of another record is refused', () => {
+    expect(() => pageOf({ resistant: { ...resistant, weights: weights.slice(1) } })).toThrow(
+      expect.objectContaining({ code: 'LENGTH_MISMATCH', path: 'weights' }),
+    );
+  });
+});
+
+test('a fit without the worst of its residual tells the rest', () => {
+  const { rms } = record.diagnostics.residual;
+  const diagnostics = { ...record.diagnostics, residual: { rms } };
+  const page = parse(reportHtml({ ...full, fit: { ...full.fit, diagnostics } }));
+  expect(sentences(page)[2]).toContain('What is not tide is 81 mm typically (root mean square): ');
+  expect((all(page, 'section')[3] as Node).text).toContain(
+    'What is left after the tide is 81 mm (root mean square). ',
+  );
+});
+
 test('no script, no handler, no address outside, no import', () => {
   expect(all(root, 'script')).toHaveLength(0);
   expect(html).not.toMatch(

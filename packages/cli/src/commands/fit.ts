@@ -3,7 +3,7 @@
  * @module
  */
 import { type LongWork, toInstant } from '@staithe/core';
-import { fitHarmonicsAsync, type HarmonicFit } from '@staithe/fit';
+import { fitHarmonicsAsync, type RecordFit } from '@staithe/fit';
 import type { GaugeRecord } from '@staithe/gauge';
 import { caution, constantsText } from '@staithe/report';
 import type { Command } from 'commander';
@@ -11,6 +11,7 @@ import { checkOutput, deliver } from '../deliver.js';
 import { inFile } from '../failure.js';
 import { doubtRows, findingsJson, readRow } from '../findings.js';
 import { type FitFlags, fitOptionsOf, originOf, withFit } from '../fit-options.js';
+import { doubtedJson, doubtedRow, heldRow } from '../fit-rows.js';
 import { withHelp } from '../help.js';
 import { readRecord, type RecordOptions, withRecord } from '../input.js';
 import { momentText, readZone, type Zone } from '../local-time.js';
@@ -26,7 +27,7 @@ interface Options extends CommonOptions, RecordOptions, FitFlags, ZoneOptions {
 export interface Fitted {
   readonly record: GaugeRecord;
   readonly judged: Judged;
-  readonly fit: HarmonicFit;
+  readonly fit: RecordFit;
   readonly findings: ReturnType<typeof findingsBy>;
 }
 
@@ -53,13 +54,6 @@ export function fitRows(
   zone: Zone,
   all: boolean,
 ): string {
-  const { constituents } = fit.constants;
-  const standings = (['firm', 'faint', 'borrowed'] as const)
-    .map(
-      (standing) => [constituents.filter((c) => c.standing === standing).length, standing] as const,
-    )
-    .filter(([n]) => n > 0)
-    .map(([n, standing]) => `${n} ${standing}`);
   const { rms, largest, largestAt } = fit.diagnostics.residual;
   const { order, matrix } = fit.covariance;
   const steps = (fit.constants.steps ?? []).map(({ at, change }, i) => {
@@ -75,7 +69,8 @@ export function fitRows(
     judged.failed === 0
       ? ''
       : row('set aside', all ? `none, not even ${set}` : `${set}; see staithe check`),
-    row('held', `${counted(constituents.length, 'line')}: ${standings.join(', ')}`),
+    doubtedRow(fit.resistant, 'sample'),
+    heldRow(fit.constants.constituents),
     row(
       'not tide',
       `${millimetres(rms)} mm typical, ${millimetres(largest)} mm worst (${momentText(largestAt, zone)})`,
@@ -101,6 +96,7 @@ async function run(file: string, options: Options): Promise<number> {
         constants,
         diagnostics,
         warnings: fit.warnings,
+        ...doubtedJson(fit),
         setAside: options.everySample ? 0 : judged.failed,
         check: findingsJson(record, judged.check, findings),
         caution: caution('levels'),

@@ -71,7 +71,7 @@ async function pageOf(file: string, options: Options, fitted: Fitted): Promise<s
       ],
       findings: record.warnings.map(({ message }) => message),
     },
-    fit,
+    fit: { ...fit, errorModel: options.errorModel },
     turningPoints: curve.turningPoints({ from: span.from - DAY, to: span.to + DAY }),
     month,
     weekHeights: curve.heights({

@@ -63,6 +63,29 @@ export function thinned(
   return points;
 }
 
+export const HALF = 0.5; // of the weight of a sample as good as any
+
+/** Samples of less than half weight in a row, at most one in a few pixels: of those the one of least weight. */
+export function doubted(
+  { times, values }: Samples,
+  weights: ArrayLike<number>,
+  first: number,
+  row: Row,
+  columns: number,
+): [Instant, number][] {
+  const least = new Map<number, number>();
+  for (let i = first; i < times.length && (times[i] as number) < row.to; i++) {
+    if (!((weights[i] as number) < HALF) || Number.isNaN(values[i])) continue;
+    const share = ((times[i] as number) - row.from) / (row.to - row.from);
+    const column = Math.floor(share * columns);
+    const held = least.get(column);
+    if (held === undefined || (weights[i] as number) < (weights[held] as number)) {
+      least.set(column, i);
+    }
+  }
+  return [...least.values()].map((i) => [times[i] as number, values[i] as number]);
+}
+
 /** What the margin says of a row: `flat line, rejected, 2.0 d`, the longest first. */
 export function marginNames(runs: readonly FlaggedRun[], row: Row, step: number): string[] {
   const here = runs.filter(({ from, to }) => from < row.to && to + step > row.from);

@@ -59,6 +59,7 @@ const EMPTY: ReadonlySet<string> = /* @__PURE__ */ new Set([
   'line',
   'rect',
   'circle',
+  'ellipse',
   'meta',
   'br',
   'hr',

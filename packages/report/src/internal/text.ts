@@ -60,3 +60,11 @@ export function wrapText(text: string, width: number): string[] {
   if (line !== '') lines.push(line);
   return lines;
 }
+
+const LABEL = 10; // characters
+
+/** A label and what it says, wrapped beside it. */
+export const labelled = (label: string, text: string, width: number): string =>
+  wrapText(text, width - LABEL)
+    .map((line, i) => padRight(i === 0 ? label : '', LABEL) + line)
+    .join('\n');

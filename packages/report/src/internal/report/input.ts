@@ -11,7 +11,7 @@ import type {
   Series,
 } from '@staithe/core';
 import type { TideLimits } from '@staithe/datums';
-import type { FitDiagnostics, FitWarning } from '@staithe/fit';
+import type { FitDiagnostics, FitOptions, FitWarning, ResistantWeights } from '@staithe/fit';
 import type { TideWindow, TurningPoint } from '@staithe/predict';
 import type { FlaggedRun, LeftOver, RecordGap, Rung, SkyDay, ZeroStep } from '../../types.js';
 
@@ -37,6 +37,10 @@ export interface ReportFit {
   readonly residuals?: Series | undefined;
   readonly warnings?: readonly Pick<FitWarning, 'message'>[] | undefined;
   readonly leftOver?: readonly LeftOver[] | undefined;
+  /** The weights of a resistant fit, one a sample of the record. */
+  readonly resistant?: ResistantWeights | undefined;
+  /** What the fit was told of its errors; else the diagnostics say whether it was the spectrum. */
+  readonly errorModel?: FitOptions['errorModel'];
 }
 
 /** Access windows and what they are windows of. @public */

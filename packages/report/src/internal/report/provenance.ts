@@ -3,6 +3,7 @@
  * @module
  */
 import { formatInstant, type NodalHold, toInstant } from '@staithe/core';
+import { format } from 'd3-format';
 import { conditionText } from '../../windows-text.js';
 import { type Child, element } from '../markup.js';
 import { count, metres } from '../numbers.js';
@@ -50,21 +51,31 @@ function recordRows({ input, record }: Facts): Child[][] {
   return rows;
 }
 
+function discsText({ input }: Facts): string {
+  const { diagnostics, errorModel } = input.fit;
+  if (errorModel === 'redrawn') return 'the fit repeated on what is not tide, redrawn';
+  return (diagnostics?.noise ?? []).some(({ bins }) => bins > 0)
+    ? 'the noise beside each line in the spectrum of what is not tide'
+    : 'the size of what is not tide, samples taken as independent';
+}
+
 function fitRows(facts: Facts): Child[][] {
-  const { constants, diagnostics } = facts.input.fit;
+  const { constants, diagnostics, resistant } = facts.input.fit;
   const rows: Child[][] = [];
   if (diagnostics) {
     rows.push([
       'H and G of each line',
       `least squares over ${count(diagnostics.samples)} samples, ${diagnostics.days.toFixed(1)} days, ${diagnostics.unknowns} unknowns, rank ${diagnostics.rank}, condition ${diagnostics.condition.toFixed(1)}`,
     ]);
-    const bins = diagnostics.noise.reduce((most, noise) => Math.max(most, noise.bins), 0);
-    rows.push([
-      '95 % discs',
-      bins > 0
-        ? 'the noise beside each line in the spectrum of what is not tide'
-        : 'the size of what is not tide, samples taken as independent',
-    ]);
+    if (resistant) {
+      const { curve, cutoff, scale } = resistant;
+      const turns = curve === 'biweight' ? 'falling to none at' : 'falling beyond';
+      rows.push([
+        'Weights',
+        `resistant (${curve}): ${turns} ${format('~g')(cutoff)} scales of ${(scale * 1000).toFixed(1)} mm`,
+      ]);
+    }
+    rows.push(['95 % discs', discsText(facts)]);
     rows.push(['What is not tide', 'observed minus fitted, on the samples of the fit']);
   } else {
     rows.push([

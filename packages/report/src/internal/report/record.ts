@@ -69,6 +69,15 @@ function faultTable(runs: readonly FlaggedRun[], step: number): Child {
   );
 }
 
+function doubted({ input }: Facts): string[] {
+  const { resistant } = input.fit;
+  if (resistant === undefined) return [];
+  const { doubted: n, setAside } = resistant;
+  if (n === 0) return ['The fit gave no sample less than half weight.'];
+  const none = setAside === 0 ? '' : `, ${count(setAside)} of them none`;
+  return [`The fit gave ${counted(n, 'sample')} less than half weight${none}.`];
+}
+
 export function recordFaults(facts: Facts): Question {
   const title = 'What was wrong with the record?';
   const { record, input, zone, place } = facts;
@@ -76,6 +85,7 @@ export function recordFaults(facts: Facts): Question {
     return { title, body: paragraph('No record was given: the constants came as a document.') };
   }
   const { runs, gaps = [], steps = [], findings = [], series } = input.record;
+  const weights = input.fit.resistant?.weights;
   const all = [
     ...runs,
     ...gaps.map(
@@ -90,9 +100,12 @@ export function recordFaults(facts: Facts): Question {
     paragraph(
       `${count(record.missing)} of ${counted(record.due, 'sample')} ${record.missing === 1 ? 'is' : 'are'} missing, one due every ${duration(record.step)}; the longest time without any is ${duration(record.longestGap)}.`,
     ),
-    bullets([...zero, ...findings]),
+    bullets([...zero, ...doubted(facts), ...findings]),
     figure((options) =>
-      drawFoldedRecord({ series, runs, gaps, steps, title: `The record of ${place}` }, options),
+      drawFoldedRecord(
+        { series, runs, gaps, steps, weights, title: `The record of ${place}` },
+        options,
+      ),
     ),
     faultTable(all, record.step),
   ];

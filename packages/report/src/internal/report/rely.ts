@@ -48,8 +48,13 @@ function residualSentence({ input, zone }: Facts): string {
   const residual = input.fit.diagnostics?.residual;
   if (residual === undefined)
     return 'How far the water strays from the tide is not known here: the fit came without its diagnostics.';
+  const { rms, largest, largestAt } = residual;
+  const worst =
+    largest === undefined || largestAt === undefined
+      ? ''
+      : ` and was ${millimetres(largest)} mm at its worst, on ${momentIn(zone, largestAt)}`;
   return (
-    `What is not tide is ${millimetres(residual.rms)} mm typically (root mean square) and was ${millimetres(residual.largest)} mm at its worst, on ${momentIn(zone, residual.largestAt)}: ` +
+    `What is not tide is ${millimetres(rms)} mm typically (root mean square)${worst}: ` +
     'expect an actual level to stray from a predicted one by as much.'
   );
 }

@@ -5,6 +5,7 @@
 import { drawDials } from '../../dials.js';
 import { drawResidualRaster, leftOverTexts } from '../../residual-raster.js';
 import { type Child, element } from '../markup.js';
+import { leftOutText } from '../left-out.js';
 import { count, degrees, metres, millimetres, returnsEvery } from '../numbers.js';
 import { groundsOf, groupBySpecies } from '../species.js';
 import { cleanText } from '../text.js';
@@ -61,10 +62,7 @@ function constantsTable({ input }: Facts): Child {
 export function tideHere(facts: Facts): Question {
   const { input, datum } = facts;
   const { constants, diagnostics } = input.fit;
-  const left = (diagnostics?.candidates ?? []).filter(({ decision }) => decision === 'left');
-  const leftText = left
-    .map(({ name, reason }) => `${cleanText(name, 12)} (${cleanText(reason)})`)
-    .join(', ');
+  const left = leftOutText(diagnostics);
   const rate = constants.secularRate;
   const body: Child = [
     paragraph(
@@ -76,20 +74,30 @@ export function tideHere(facts: Facts): Question {
       'low',
     ),
     constantsTable(facts),
-    left.length > 0 && soft(`Left out: ${leftText}.`),
+    left !== undefined && soft(`Left out: ${left}.`),
     bullets((input.fit.warnings ?? []).map(({ message }) => message)),
   ];
   return { title: 'What does the tide do here?', body };
 }
 
+function restSentence({ input, zone }: Facts): string {
+  const { diagnostics } = input.fit;
+  if (diagnostics === undefined) return 'The fit came without the figures of what is left.';
+  const { rms, largest, largestAt } = diagnostics.residual;
+  const worst =
+    largest === undefined || largestAt === undefined
+      ? ''
+      : `, ${millimetres(largest)} mm at its worst, on ${momentIn(zone, largestAt)}`;
+  return (
+    `What is left after the tide is ${millimetres(rms)} mm (root mean square)${worst}. ` +
+    `For the mean level the record is worth ${count(diagnostics.effectiveSamples)} independent samples.`
+  );
+}
+
 export function notTide(facts: Facts): Question {
   const title = 'What is not tide?';
-  const { residuals, diagnostics, leftOver = [] } = facts.input.fit;
-  const residual = diagnostics?.residual;
-  const sentence =
-    residual === undefined
-      ? 'The fit came without the figures of what is left.'
-      : `What is left after the tide is ${millimetres(residual.rms)} mm (root mean square), ${millimetres(residual.largest)} mm at its worst, on ${momentIn(facts.zone, residual.largestAt)}. For the mean level the record is worth ${count(diagnostics?.effectiveSamples ?? 0)} independent samples.`;
+  const { residuals, leftOver = [] } = facts.input.fit;
+  const sentence = restSentence(facts);
   if (residuals === undefined) {
     return {
       title,
