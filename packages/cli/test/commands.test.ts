@@ -88,6 +88,7 @@ describe.concurrent('fit', () => {
       'constants',
       'diagnostics',
       'warnings',
+      'leftOver',
       'setAside',
       'check',
       'caution',

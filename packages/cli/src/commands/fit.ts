@@ -3,7 +3,7 @@
  * @module
  */
 import { type LongWork, toInstant } from '@staithe/core';
-import { fitHarmonicsAsync, type RecordFit } from '@staithe/fit';
+import { fitHarmonicsAsync, type RecordFit, leftOverAsync, type LeftOverLine } from '@staithe/fit';
 import type { GaugeRecord } from '@staithe/gauge';
 import { caution, constantsText } from '@staithe/report';
 import type { Command } from 'commander';
@@ -29,7 +29,11 @@ export interface Fitted {
   readonly judged: Judged;
   readonly fit: RecordFit;
   readonly findings: ReturnType<typeof findingsBy>;
+  /** Lines that stand out of the residual, the largest first. */
+  readonly leftOver: readonly LeftOverLine[];
 }
+
+const MOST_LEFT_OVER = 3;
 
 /** Reads, judges, fits, and judges again. */
 export async function fitRecord(
@@ -45,12 +49,13 @@ export async function fitRecord(
   const fit = await inFile(file, () =>
     fitHarmonicsAsync(series, { ...asked, ...originOf(record, file), onProgress: work.onProgress }),
   );
-  return { record, judged, fit, findings: findingsBy(record, fit) };
+  const { lines } = await leftOverAsync(fit, { most: MOST_LEFT_OVER, onProgress: work.onProgress });
+  return { record, judged, fit, findings: findingsBy(record, fit), leftOver: lines };
 }
 
 /** `held      37 lines: 31 firm, 3 faint, 3 borrowed` and the other rows of a fit. */
 export function fitRows(
-  { record, judged, fit, findings }: Fitted,
+  { record, judged, fit, findings, leftOver }: Fitted,
   zone: Zone,
   all: boolean,
 ): string {
@@ -75,6 +80,10 @@ export function fitRows(
       'not tide',
       `${millimetres(rms)} mm typical, ${millimetres(largest)} mm worst (${momentText(largestAt, zone)})`,
     ),
+    ...leftOver.map(({ speed, amplitude, likely }) => {
+      const guess = likely === undefined ? '' : `, likely ${likely}`;
+      return row('left over', `near ${speed.toFixed(3)}°/h, ${millimetres(amplitude)} mm${guess}`);
+    }),
     ...steps,
     ...fit.warnings.map(({ message }) => row('note', message)),
     doubtRows(findings, zone, '--steps'),
@@ -87,7 +96,7 @@ async function run(file: string, options: Options): Promise<number> {
   const work = progress();
   const fitted = await fitRecord(file, options, zone, work);
   work.done();
-  const { record, judged, fit, findings } = fitted;
+  const { record, judged, fit, findings, leftOver } = fitted;
   const { constants, diagnostics } = fit;
   await deliver(
     {
@@ -96,6 +105,7 @@ async function run(file: string, options: Options): Promise<number> {
         constants,
         diagnostics,
         warnings: fit.warnings,
+        leftOver,
         ...doubtedJson(fit),
         setAside: options.everySample ? 0 : judged.failed,
         check: findingsJson(record, judged.check, findings),

@@ -47,7 +47,7 @@ async function digestOf(file: string): Promise<string | undefined> {
 }
 
 async function pageOf(file: string, options: Options, fitted: Fitted): Promise<string> {
-  const { record, judged, fit, findings } = fitted;
+  const { record, judged, fit, findings, leftOver } = fitted;
   const { constants } = fit;
   const zone = readZone(options.zone);
   // The month after the record, where nobody asks for another: a report that is made twice is the same twice.
@@ -71,7 +71,7 @@ async function pageOf(file: string, options: Options, fitted: Fitted): Promise<s
       ],
       findings: record.warnings.map(({ message }) => message),
     },
-    fit: { ...fit, errorModel: options.errorModel },
+    fit: { ...fit, errorModel: options.errorModel, leftOver },
     turningPoints: curve.turningPoints({ from: span.from - DAY, to: span.to + DAY }),
     month,
     weekHeights: curve.heights({
