@@ -49,6 +49,7 @@ export default {
         '*/*.mjs',
         'examples/given.ts',
         'docs/constituent-pages.ts',
+        'docs/current-ellipse.ts',
         'test/**/*.test.{ts,mjs}',
       ],
       // The consumers are projects of their own: they run in a sandbox outside the workspace.

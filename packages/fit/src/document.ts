@@ -13,11 +13,11 @@ import { atan2 } from '@staithe/core/trig';
 import { type Design, headCount } from './design.js';
 import { disc95, pairErrors } from './errors-of.js';
 import type { LineNoise } from './noise.js';
-import type { FitRecord } from './record.js';
+import type { RecordSummary } from './record.js';
 import type { FitOptions } from './types.js';
 
 /** The constants, fitted and borrowed. */
-function constantsOf(
+export function constantsOf(
   design: Design,
   solution: Float64Array,
   covariance: Float64Array,
@@ -27,7 +27,7 @@ function constantsOf(
   const head = headCount(design);
   const { names } = design.basis;
   const fitted: HarmonicConstant[] = [];
-  for (let j = 0; j < design.fitted; j++) {
+  for (let j = 0; j < design.fitted - design.free; j++) {
     const at = head + 2 * j;
     const [a, b] = [solution[at] as number, solution[at + 1] as number];
     const read = (row: number, column: number): number =>
@@ -68,25 +68,61 @@ function constantsOf(
 }
 
 /** The middle of a record as text: where the secular rate counts from and f and u are held. */
-export function middleOf(record: FitRecord): string {
+export function middleOf(record: RecordSummary): string {
   return formatInstant(Math.round((record.from + record.to) / 2));
+}
+
+/** Lower triangle of a symmetric matrix, row by row. */
+export function packed(matrix: Float64Array, count: number): number[] {
+  const out: number[] = [];
+  for (let i = 0; i < count; i++) {
+    for (let j = 0; j <= i; j++) out.push(matrix[i * count + j] as number);
+  }
+  return out;
+}
+
+/** The models of a fit, as its document carries them. */
+export function modelsOf(
+  options: FitOptions,
+  record: RecordSummary,
+): Pick<HarmonicConstants, 'argumentModel' | 'nodalModel' | 'nodalHold' | 'nodalLatitude'> {
+  const { place, nodalHold, nodalModel = 'potential', argumentModel = 'iers2010' } = options;
+  return {
+    argumentModel,
+    nodalModel,
+    ...(nodalHold === 'calendar-year' ? { nodalHold } : {}),
+    ...(nodalHold === 'span-middle' ? { nodalHold: { heldAt: middleOf(record) } } : {}),
+    ...(nodalModel === 'potential' && place?.latitude !== undefined
+      ? { nodalLatitude: place.latitude }
+      : {}),
+  };
+}
+
+/** Where the constants come from. */
+export function originOf(
+  { source }: FitOptions,
+  record: RecordSummary,
+): Pick<HarmonicConstants, 'source' | 'record'> {
+  return {
+    ...(source === undefined ? {} : { source }),
+    record: {
+      from: formatInstant(record.from),
+      to: formatInstant(record.to),
+      samples: record.samples,
+    },
+  };
 }
 
 export function documentOf(
   design: Design,
-  record: FitRecord,
+  record: RecordSummary,
   options: FitOptions,
   solution: Float64Array,
   covariance: Float64Array,
   noise: readonly LineNoise[],
 ): HarmonicConstants {
-  const { place, datum, source, nodalHold } = options;
-  const nodalModel = options.nodalModel ?? 'potential';
-  const count = design.order.length;
+  const { place, datum } = options;
   const rated = design.rateFrom !== undefined;
-  const packed: number[] = [];
-  for (let i = 0; i < count; i++)
-    for (let j = 0; j <= i; j++) packed.push(covariance[i * count + j] as number);
   return {
     format: 'staithe-constants',
     version: 1,
@@ -105,20 +141,9 @@ export function documentOf(
           })),
         }
       : {}),
-    argumentModel: options.argumentModel ?? 'iers2010',
-    nodalModel,
-    ...(nodalHold === 'calendar-year' ? { nodalHold } : {}),
-    ...(nodalHold === 'span-middle' ? { nodalHold: { heldAt: middleOf(record) } } : {}),
-    ...(nodalModel === 'potential' && place?.latitude !== undefined
-      ? { nodalLatitude: place.latitude }
-      : {}),
+    ...modelsOf(options, record),
     constituents: constantsOf(design, solution, covariance, noise),
-    uncertainty: { order: design.order, covariance: packed },
-    ...(source === undefined ? {} : { source }),
-    record: {
-      from: formatInstant(record.from),
-      to: formatInstant(record.to),
-      samples: record.samples,
-    },
+    uncertainty: { order: design.order, covariance: packed(covariance, design.order.length) },
+    ...originOf(options, record),
   };
 }

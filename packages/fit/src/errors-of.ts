@@ -5,8 +5,9 @@
 import type { Progress } from '@staithe/core';
 import { degreesToRadians, HOUR } from '@staithe/core';
 import { type Design, headCount } from './design.js';
-import { type LineNoise, noiseBeside, residualOf } from './noise.js';
+import { type LineNoise, noiseBesideAll, residualOf } from './noise.js';
 import type { FitRecord } from './record.js';
+import { discFactor } from './student.js';
 
 /** Noise of the mean level first, then of each fitted constituent. */
 export function* noiseOf(
@@ -23,13 +24,9 @@ export function* noiseOf(
   const residual = residualOf(record.times, record.step, residuals);
   const speeds = Array.from(basis.speeds, (speed) => (speed * HOUR) / degreesToRadians(1));
   const lines = [0, ...speeds.slice(0, fitted)];
-  const out: LineNoise[] = [];
-  for (const line of lines) {
-    const noise = noiseBeside(residual, line, [0, ...speeds]);
-    out.push(noise.bins > 0 ? noise : { density: variance, bins: 0 });
-    yield { done: out.length, total: lines.length, stage: 'noise beside each line' };
-  }
-  return out;
+  const found = noiseBesideAll(residual, lines, [0, ...speeds]);
+  yield { done: lines.length, total: lines.length, stage: 'noise beside each line' };
+  return found.map((noise) => (noise.bins > 0 ? noise : { density: variance, bins: 0 }));
 }
 
 /** Covariance of the coefficients: (AᵀA)⁻¹ between the noise of the two columns. */
@@ -47,28 +44,14 @@ export function covarianceOf(
   return inverse.map((value, at) => value * sigma(Math.floor(at / count)) * sigma(at % count));
 }
 
-/** The b-th root of 20, by Newton's method: exactly specified operations alone. */
-function rootOf20(b: number): number {
-  // 1 + 3/b lies below the root, so the first step leads above it, and all others fall.
-  let root = 1 + 3 / b;
-  for (let i = 0; i < 60; i++) {
-    let power = 1;
-    for (let k = 1; k < b; k++) power *= root;
-    const next = root - (root - 20 / power) / b;
-    if (i > 0 && !(next < root)) break;
-    root = next;
-  }
-  return root;
-}
-
 /**
  * Squared half axis of the 95 % region of two jointly normal numbers, over their variance: χ² for a variance that is
- * known, 5.991; 2·F(2, 2b) = 2b·(20^{1/b} − 1) for one that is the mean of b bins, each exponentially distributed.
+ * known, 5.991; 2·F(2, 2b) for one that is worth b bins, over Student's factor, which is in the variance already.
  *
  * @param bins - b; 0: known.
  */
 export function disc95(bins: number): number {
-  return bins > 0 ? 2 * bins * (rootOf20(bins) - 1) : 5.991464547107979;
+  return discFactor(bins);
 }
 
 /** Amplitude, phase lag and their errors from a pair of coefficients. */

@@ -2,23 +2,27 @@
  * Noise density at each line, from the residual beside it.
  *
  * A line's coefficients feel the noise at its own frequency alone. The spectrum of the sea is red and has cusps round
- * strong lines (W. Munk, B. Zetler and G. Groves 1965), so the density is taken from the band 0.02 to 0.3°/h away,
- * widened only where bins are too few. I(ω) = |Σ r·e^{−iωt}|²/n has the variance of white noise as its mean, less the
- * share h that the fit took out: E I = s²(1 − h), h nearly the spectral window of the samples at the distance of each
- * fitted line. Bins of which the fit left less than 30 % are no evidence (docs/fitting.md).
+ * strong lines (W. Munk, B. Zetler and G. Groves 1965), so the density is read from the nearest bins that the fit left
+ * whole (docs/fitting.md). I(ω) = |Σ r·e^{−iωt}|²/n has the variance of white noise as its mean, less the share that the
+ * fit took out. Three steps: which bins (`binsBeside`), what they hold (`sumsAt`; sums add up over chunks of a record),
+ * what follows (`densityFrom`).
  * @module
  */
 import { degreesToRadians, HOUR, wrapDegrees } from '@staithe/core';
 import { sinCosInto } from '@staithe/core/trig';
-import { runsOf, type SampleRun, windowAt } from './window.js';
+import { exponential, logarithm } from './logarithm.js';
+import { type BinGroup, binsBeside, type LineBins, type NoiseBins } from './noise-bins.js';
+import { studentFactor } from './student.js';
+import { coveredBy, runsOf, type SampleRun } from './window.js';
 
-const NEAREST = 0.02; // degrees per hour
-const BANDS = [0.3, 1, 3, 8];
-const ENOUGH = 8;
-const MOST = 32;
 const RESTART = 1024;
-const LEFT = 0.3; // share of the noise that the fit must have left in a bin
-const REACH = 1.5; // degrees per hour, beyond which the window of a line is not counted
+const SLOPE_DOUBT = 0.5; // of the common slope before any bin is seen; its mean is 0
+const LOW_SLOPE = -0.5; // of the spectrum near 0 where bins do not tell, between white and red noise, and its doubt
+const LOW_SLOPE_DOUBT = 0.7;
+const LOW_WIDTH = 2.5; // of ln speed, over which bins near 0 count
+const EULER = 0.5772156649015329;
+const LEAST = 1e-300;
+const ROOT_OF_MEAN = [0.886226925452758, 0.9399856029866254]; // √ of the mean of one and of two exponential variables, expected
 
 /** Residual with gaps as zeros or taken out: times from the middle of the record in hours, and values. */
 export interface Residual {
@@ -32,87 +36,232 @@ export interface Residual {
   readonly samples: number;
 }
 
-/** |Σ r·e^{−iωt}|²/n at a speed in degrees per hour. */
-function periodogramAt(residual: Residual, speed: number, pair: Float64Array): number {
-  const { hours, values, step, samples } = residual;
-  let re = 0;
-  let im = 0;
-  let s = 0;
-  let c = 1;
-  sinCosInto(degreesToRadians(wrapDegrees(speed * step)), pair);
-  const turnSin = pair[0] as number;
-  const turnCos = pair[1] as number;
-  for (let i = 0; i < values.length; i++) {
-    if (step === 0 || i % RESTART === 0) {
-      sinCosInto(degreesToRadians(wrapDegrees(speed * (hours[i] as number))), pair);
-      s = pair[0] as number;
-      c = pair[1] as number;
-    }
-    const value = values[i] as number;
-    re += value * c;
-    im += value * s;
-    const turned = c * turnCos - s * turnSin;
-    s = c * turnSin + s * turnCos;
-    c = turned;
-  }
-  return (re * re + im * im) / samples;
-}
-
-/** Speeds beside a line, a turn of the covered time apart, on both sides while they are above 0. */
-function binsBeside(line: number, band: number, width: number): number[] {
-  const offsets: number[] = [];
-  const nearest = Math.max(NEAREST, width);
-  for (let offset = nearest; offset <= Math.max(band, 6 * width); offset += width) {
-    offsets.push(offset);
-  }
-  // Thinned by offset, so that both sides of the line stay: the spectrum is not level.
-  const every = Math.max(1, Math.ceil((2 * offsets.length) / MOST));
-  return offsets
-    .filter((_, i) => i % every === 0)
-    .flatMap((offset) => [line - offset, line + offset])
-    .filter((speed) => speed >= width);
-}
-
-/** The share of the noise at a speed that the fit of the lines left in the residual. */
-function shareLeft({ runs, samples }: Residual, speed: number, lines: readonly number[]): number {
-  let taken = 0;
-  for (const line of lines) {
-    const apart = Math.abs(speed - line);
-    if (apart < REACH) taken += windowAt(runs, samples, apart);
-  }
-  return 1 - taken;
-}
-
 /** The noise that a line feels. */
 export interface LineNoise {
-  /** Variance of white noise of the same density, m². */
+  /** Variance of white noise of the same density, m², times {@link studentFactor}: ±1.96 σ holds 95 %. */
   readonly density: number;
+  /** Independent bins that the density is worth, not a whole number; 0: it is taken as known. */
   readonly bins: number;
+  /** The density as estimated, without that factor, m². */
+  readonly level?: number | undefined;
+}
+
+/**
+ * Σ r·e^{−iωt} at each speed. Sums of chunks add up where their hours count from the same instant.
+ *
+ * @param residual - Values that are not numbers must have been made 0.
+ * @param speeds - Degrees per hour.
+ * @returns Real and imaginary part by turns.
+ */
+export function sumsAt(
+  { hours, values, step }: Pick<Residual, 'hours' | 'values' | 'step'>,
+  speeds: Float64Array,
+): Float64Array {
+  const out = new Float64Array(2 * speeds.length);
+  const pair = new Float64Array(2);
+  const count = values.length;
+  for (let k = 0; k < speeds.length; k++) {
+    const speed = speeds[k] as number;
+    let re = 0;
+    let im = 0;
+    sinCosInto(degreesToRadians(wrapDegrees(speed * step)), pair);
+    const turnSin = pair[0] as number;
+    const turnCos = pair[1] as number;
+    const length = step === 0 ? 1 : RESTART;
+    for (let from = 0; from < count; from += length) {
+      const to = Math.min(count, from + length);
+      sinCosInto(degreesToRadians(wrapDegrees(speed * (hours[from] as number))), pair);
+      let s = pair[0] as number;
+      let c = pair[1] as number;
+      for (let i = from; i < to; i++) {
+        const value = values[i] as number;
+        re += value * c;
+        im -= value * s;
+        const turned = c * turnCos - s * turnSin;
+        s = c * turnSin + s * turnCos;
+        c = turned;
+      }
+    }
+    out[2 * k] = re;
+    out[2 * k + 1] = im;
+  }
+  return out;
+}
+
+/** The logarithm of a group's density: what it says, and how sure that is. */
+interface Reading {
+  /** Logarithm of the rank or of the speed. */
+  readonly x: number;
+  readonly y: number;
+  readonly variance: number;
+}
+
+/** The mean of g exponential variables has ln(mean) + ψ(g) − ln g for its expected logarithm, ψ′(g) for its variance. */
+function readingOf({ at, bins }: BinGroup, power: (bin: number) => number): Reading {
+  const g = bins.length;
+  let psi = -EULER;
+  let variance = (Math.PI * Math.PI) / 6;
+  for (let k = 1; k < g; k++) {
+    psi += 1 / k;
+    variance -= 1 / (k * k);
+  }
+  const sum = bins.reduce((total, bin) => total + power(bin), 0);
+  return { x: logarithm(at), y: logarithm(Math.max(LEAST, sum)) - psi, variance };
+}
+
+interface Weighted extends Reading {
+  readonly weight: number;
+}
+
+function meanOf(readings: readonly Weighted[], of: (reading: Weighted) => number): number {
+  let sum = 0;
+  let total = 0;
+  for (const reading of readings) {
+    sum += reading.weight * of(reading);
+    total += reading.weight;
+  }
+  return sum / total;
+}
+
+/** Products about the mean, x with x and x with y. */
+function slopeSums(readings: readonly Weighted[]): { xx: number; xy: number } {
+  const x0 = meanOf(readings, ({ x }) => x);
+  let xx = 0;
+  let xy = 0;
+  for (const { x, y, weight } of readings) {
+    xx += weight * (x - x0) * (x - x0);
+    xy += weight * (x - x0) * y;
+  }
+  return { xx, xy };
+}
+
+interface Slope {
+  readonly value: number;
+  readonly variance: number;
+}
+
+/** The slope towards the line that all lines share: a cusp rises, so it is never positive. */
+function commonSlope(lines: readonly (readonly Reading[] | undefined)[]): Slope {
+  let xx = 1 / (SLOPE_DOUBT * SLOPE_DOUBT);
+  let xy = 0;
+  for (const readings of lines) {
+    if (!readings || readings.length === 0) continue;
+    const sums = slopeSums(readings.map((r) => ({ ...r, weight: 1 / r.variance })));
+    xx += sums.xx;
+    xy += sums.xy;
+  }
+  return { value: Math.min(0, xy / xx), variance: 1 / xx };
+}
+
+function noiseOfBins(level: number, bins: number): LineNoise {
+  return { density: level * studentFactor(bins), bins, level };
+}
+
+/** From the logarithm of a density and its variance v: b bins with ψ′(b) = v, nearly, and their mean. */
+function noiseFrom(y: number, variance: number): LineNoise {
+  const bins = Math.max(1, 1 / variance + 0.6);
+  // ψ(b) − ln b: what an estimate of b bins has for its expected logarithm.
+  return noiseOfBins(exponential(y - 1 / (2 * bins) - 1 / (12 * bins * bins)), bins);
+}
+
+/**
+ * Beside a line: the mean of the square roots over ranks, so that a line that is not fitted does not rule it, near ranks
+ * weighing more, all brought to the first rank by the common slope.
+ */
+function besideLine(
+  groups: readonly BinGroup[],
+  slope: Slope,
+  power: (bin: number) => number,
+): LineNoise {
+  let before = 0;
+  let total = 0;
+  let root = 0;
+  let way = 0;
+  let variance = 0;
+  for (const { at, bins } of groups) {
+    const size = Math.min(bins.length, 2) - 1;
+    // A group stands for the ranks since the last one.
+    const weight = ((at - before) / (Math.sqrt(at) * Math.sqrt(Math.sqrt(at)))) * (bins.length / 2);
+    before = at;
+    const mean = bins.reduce((sum, bin) => sum + power(bin), 0) / bins.length;
+    const far = logarithm(at);
+    const expected = ROOT_OF_MEAN[size] as number;
+    root += (weight * Math.sqrt(mean) * exponential((-slope.value * far) / 2)) / expected;
+    way += weight * far;
+    variance += weight * weight * 4 * (1 / (expected * expected) - 1);
+    total += weight;
+  }
+  way /= total;
+  variance = variance / (total * total) + slope.variance * way * way;
+  return noiseOfBins((root / total) * (root / total), 1 / variance);
+}
+
+/** Near 0: a power law through the bins above, followed down to the line. */
+function lowLine(readings: readonly Reading[], speed: number): LineNoise {
+  const at = logarithm(speed);
+  const weighted = readings.map((r): Weighted => {
+    const far = (r.x - at) / LOW_WIDTH;
+    return { ...r, weight: 1 / (r.variance * (1 + far * far)) };
+  });
+  const total = weighted.reduce((sum, { weight }) => sum + weight, 0);
+  const x0 = meanOf(weighted, ({ x }) => x);
+  const way = at - x0;
+  const { xx, xy } = slopeSums(weighted);
+  const prior = 1 / (LOW_SLOPE_DOUBT * LOW_SLOPE_DOUBT);
+  const slope = (xy + LOW_SLOPE * prior) / (xx + prior);
+  const doubt = (way / (xx + prior)) * (way / (xx + prior)) * prior;
+  const variance = weighted.reduce((sum, { x, weight, variance: own }) => {
+    const share = weight / total + (weight * (x - x0) * way) / (xx + prior);
+    return sum + share * share * own;
+  }, doubt);
+  return noiseFrom(meanOf(weighted, ({ y }) => y) + slope * way, variance);
+}
+
+/**
+ * The noise of each line from what its bins hold.
+ *
+ * @param bins - Of {@link binsBeside}.
+ * @param sums - Of {@link sumsAt} at its speeds.
+ * @param samples - In the sums.
+ * @returns In the order of the lines asked for; no bins where the fit left no evidence near the line.
+ */
+export function densityFrom(bins: NoiseBins, sums: Float64Array, samples: number): LineNoise[] {
+  const power = (bin: number): number => {
+    const re = sums[2 * bin] as number;
+    const im = sums[2 * bin + 1] as number;
+    return (re * re + im * im) / (samples * (bins.left[bin] as number));
+  };
+  const readings = bins.lines.map(({ groups }) => groups.map((group) => readingOf(group, power)));
+  const slope = commonSlope(
+    bins.lines.map(({ low, first }, i) => (first && !low ? readings[i] : undefined)),
+  );
+  return bins.lines.map(({ line, groups, low }: LineBins, i) => {
+    const own = readings[i] as Reading[];
+    if (own.length === 0) return { density: 0, bins: 0 };
+    // The mean level is read at half a turn: below that no record shows anything.
+    if (low) return lowLine(own, Math.max(line, bins.width / 2));
+    return besideLine(groups, slope, power);
+  });
 }
 
 /**
  * @param residual - Of the fit.
- * @param line - Speed of the line, degrees per hour; 0 for the mean level.
+ * @param wanted - Speeds of the lines asked for, degrees per hour; 0 for the mean level. They share one slope.
  * @param lines - Speeds of all fitted and borrowed lines, 0 among them.
- * @returns No bins where the fit left no evidence near the line.
+ * @returns In the order asked for; no bins where the fit left no evidence near the line.
  */
+export function noiseBesideAll(
+  residual: Residual,
+  wanted: readonly number[],
+  lines: readonly number[],
+): LineNoise[] {
+  const bins = binsBeside(residual.runs, wanted, lines);
+  return densityFrom(bins, sumsAt(residual, bins.speeds), residual.samples);
+}
+
+/** {@link noiseBesideAll} of one line alone. */
 export function noiseBeside(residual: Residual, line: number, lines: readonly number[]): LineNoise {
-  const width = 360 / residual.covered;
-  const pair = new Float64Array(2);
-  let found: { speed: number; left: number }[] = [];
-  for (const band of BANDS) {
-    found = binsBeside(line, band, width)
-      .map((speed) => ({ speed, left: shareLeft(residual, speed, lines) }))
-      .filter(({ left }) => left >= LEFT);
-    if (found.length >= ENOUGH) break;
-  }
-  let power = 0;
-  let left = 0;
-  for (const bin of found) {
-    power += periodogramAt(residual, bin.speed, pair);
-    left += bin.left;
-  }
-  return { density: left > 0 ? power / left : 0, bins: found.length };
+  return noiseBesideAll(residual, [line], lines)[0] as LineNoise;
 }
 
 /**
@@ -132,24 +281,19 @@ export function residualOf(times: Float64Array, step: number, values: Float64Arr
     kept.map((i) => ((times[i] as number) - middle) / HOUR),
     step / HOUR,
   );
-  const covered = runs.reduce((sum, run) => sum + run.count * run.step, 0);
+  const covered = coveredBy(runs);
+  const common = { step: step / HOUR, covered, runs, samples };
+  // On a uniform grid a gap weighs nothing: 0 keeps the rotation going.
   if (step > 0) {
-    // On a uniform grid a gap weighs nothing: 0 keeps the rotation going.
     return {
       hours: times.map((t) => (t - middle) / HOUR),
       values: values.map((v) => (Number.isNaN(v) ? 0 : v)),
-      step: step / HOUR,
-      covered,
-      runs,
-      samples,
+      ...common,
     };
   }
   return {
     hours: kept.map((i) => ((times[i] as number) - middle) / HOUR),
     values: kept.map((i) => values[i] as number),
-    step: 0,
-    covered,
-    runs,
-    samples,
+    ...common,
   };
 }

@@ -12,6 +12,8 @@ import {
   refuse,
   toInstant,
 } from '@staithe/core';
+import type { Redraw } from './redrawn.js';
+import { type Curve, usualCutoff } from './resistant.js';
 import type { Borrowing, FitOptions } from './types.js';
 
 /** A constituent by name, with the caller's path in the error. */
@@ -107,13 +109,63 @@ export function readChoice<T extends string>(
   );
 }
 
-const KNOWN =
-  'constituents borrow secularRate steps weighting errorModel argumentModel nodalModel nodalHold place datum source signal onProgress';
+/** Curve and cutoff of a resistant fit; undefined where the weighting is equal. */
+export function readCurve(options: FitOptions): Curve | undefined {
+  const { weighting, resistant } = options;
+  const chosen = readChoice(weighting, 'options.weighting', ['equal', 'resistant']);
+  if (chosen === 'equal') {
+    if (resistant === undefined) return undefined;
+    throw new InputError(
+      'CONFLICT',
+      'options.resistant',
+      'expected nothing beside equal weighting, got a curve; say weighting: resistant',
+    );
+  }
+  const curve = readChoice(resistant?.curve, 'options.resistant.curve', ['biweight', 'huber']);
+  const cutoff = resistant?.cutoff ?? usualCutoff(curve);
+  if (!(cutoff >= 0.5 && cutoff <= 100)) {
+    refuse('OUT_OF_RANGE', 'options.resistant.cutoff', 'scales from 0.5 to 100', cutoff);
+  }
+  return { curve, cutoff };
+}
 
-/** Refuses an option that is not known: a misspelt one would change the result in silence. */
-export function checkKeys(options: FitOptions): void {
+/** How residuals are redrawn; undefined for the other error models. */
+export function readRedraw(options: FitOptions, uniform: boolean): Redraw | undefined {
+  const { errorModel, redraw } = options;
+  readChoice(errorModel, 'options.errorModel', ['residual-spectrum', 'independent', 'redrawn']);
+  if (errorModel !== 'redrawn') {
+    if (redraw === undefined) return undefined;
+    const text = `expected nothing beside this error model, got a redraw; say errorModel: redrawn`;
+    throw new InputError('CONFLICT', 'options.redraw', text);
+  }
+  const usual = uniform ? 'phases' : 'blocks';
+  const by = redraw?.by ?? usual;
+  readChoice(by, 'options.redraw.by', ['phases', 'blocks']);
+  if (by === 'phases' && !uniform) {
+    throw new InputError(
+      'CONFLICT',
+      'options.redraw.by',
+      'expected blocks for times of their own, got phases, which need a uniform step',
+    );
+  }
+  const { seed = 1, draws = 200 } = redraw ?? {};
+  if (!Number.isSafeInteger(seed)) {
+    refuse('OUT_OF_RANGE', 'options.redraw.seed', 'a whole number', seed);
+  }
+  if (!(Number.isInteger(draws) && draws >= 20 && draws <= 10000)) {
+    refuse('OUT_OF_RANGE', 'options.redraw.draws', 'a whole number from 20 to 10000', draws);
+  }
+  return { by, seed, draws };
+}
+
+const KNOWN =
+  'constituents borrow secularRate steps covariates weights weighting resistant errorModel redraw argumentModel nodalModel nodalHold sideLines place datum source signal onProgress';
+
+/** Refuses an option that is not known: a misspelt one would change the result in silence. `more`: others that are known. */
+export function checkKeys(options: FitOptions, more = ''): void {
+  const known = KNOWN + more;
   for (const key of Object.keys(options)) {
-    if (!KNOWN.split(' ').includes(key))
-      refuse('UNKNOWN_CHOICE', `options.${key}`, `one of ${KNOWN}`, key);
+    if (!known.split(' ').includes(key))
+      refuse('UNKNOWN_CHOICE', `options.${key}`, `one of ${known}`, key);
   }
 }

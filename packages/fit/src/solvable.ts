@@ -9,36 +9,62 @@
 import type { Constituent } from '@staithe/constituents';
 import { ComputationError, type Progress } from '@staithe/core';
 import { type Design, headCount } from './design.js';
-import { normalEquations } from './normal.js';
+import { normalEquations, type Products } from './normal.js';
+import { triangularFactor } from './orthogonal.js';
 import type { Borrowed } from './read-options.js';
-import type { FitRecord } from './record.js';
-import type { Selection } from './select.js';
-import { type Scaled, scaleGram, spectrumOf } from './solve.js';
+import type { RecordSummary } from './record.js';
+import type { Rows } from './rows.js';
+import { checkParted, type Selection } from './select.js';
+import { cholesky, type Scaled, scaleGram, weakestOf } from './solve.js';
 import type { Candidate } from './types.js';
 
-// Smallest over largest eigenvalue of the products with unit columns: below, the columns cannot be told apart.
-const REFUSED = 1e-10;
+// Smallest over largest eigenvalue of the products with unit columns, the squared inverse of the condition.
+const SQUARED = 1e-10; // below, the factor is made of the columns themselves
+const REFUSED = 1e-15; // below, the columns cannot be told apart
 const DROPPED = 1e-4; // where the choice is ours, a poorer one is not made
 // Smaller eigenvalue of a pair's own products, a sample: 0.5 for a whole oscillation of size 1.
 const STILL_REFUSED = 1e-8;
 const STILL_DROPPED = 1e-3;
 
-/** What is solved. */
-export interface Solvable {
+/** A design with its products: what choosing works on. */
+export interface Posed {
   readonly design: Design;
   readonly selection: Selection;
+  readonly products: Products;
+}
+
+/** What is solved. */
+export interface Solvable extends Posed {
   readonly scaled: Scaled;
-  /** Aᵀy. */
-  readonly rhs: Float64Array;
+  /** Lower triangular, of `scaled`. */
+  readonly factor: Float64Array;
+  readonly solver: 'cholesky' | 'orthogonal';
+  /** AᵀWy of each right-hand side. */
+  readonly sides: readonly Float64Array[];
   /** Of the design with unit columns. */
   readonly condition: number;
 }
 
-type Products = { readonly matrix: Float64Array; readonly size: number };
+/** What a choice is made with. */
+export interface Choosing {
+  readonly record: RecordSummary;
+  /** Never dropped. */
+  readonly parents: ReadonlySet<string>;
+  /** Whether the choice is ours and may be thinned. */
+  readonly ours: boolean;
+  /** Makes the design of a list. */
+  readonly designFor: (taken: readonly Constituent[]) => Design;
+}
 
-/** Products of the columns that are kept; the last, the record itself, always is. */
-function keep({ matrix, size }: Products, columns: readonly number[]): Products {
-  const kept = [...columns, size - 1];
+/** The constituent or the other unknown that a column belongs to. */
+function ownerOf(column: string): string {
+  return column.replace(/\.(cos|sin)$/, '');
+}
+
+/** Products of some columns; those of the right-hand sides are always kept. */
+function keep({ matrix, size }: Products, columns: readonly number[], count: number): Products {
+  const kept = [...columns];
+  for (let side = count; side < size; side++) kept.push(side);
   const out = new Float64Array(kept.length * kept.length);
   kept.forEach((from, i) => {
     for (let j = 0; j <= i; j++) {
@@ -58,10 +84,10 @@ function smaller({ matrix, size }: Products, at: number): number {
 }
 
 /** The two names that weigh most in the weakest direction of the design. */
-function weakestPair(order: readonly string[], weakest: readonly number[]): string[] {
+function weakestPair(order: readonly string[], weakest: Float64Array): string[] {
   const weights = new Map<string, number>();
   order.forEach((column, i) => {
-    const name = column.replace(/\.(cos|sin)$/, '');
+    const name = ownerOf(column);
     weights.set(name, (weights.get(name) ?? 0) + (weakest[i] as number) * (weakest[i] as number));
   });
   return [...weights]
@@ -70,20 +96,12 @@ function weakestPair(order: readonly string[], weakest: readonly number[]): stri
     .map(([name]) => name);
 }
 
-function without(selection: Selection, left: readonly Candidate[]): Selection {
-  const names = new Set(left.map(({ name }) => name));
-  return {
-    taken: selection.taken.filter(({ name }) => !names.has(name)),
-    candidates: [...selection.candidates.filter(({ name }) => !names.has(name)), ...left],
-  };
-}
-
-function checkEnough(
-  record: FitRecord,
-  taken: readonly Constituent[],
-  count: number,
-  ours: boolean,
+/** Refuses fewer samples than unknowns, and our own choice where it came out empty. */
+export function checkEnough(
+  { record, ours }: Choosing,
+  { selection: { taken }, design }: Posed,
 ): void {
+  const count = design.order.length;
   const empty = ours && taken.length === 0;
   if (record.samples > count && !empty) return;
   const wanted = empty
@@ -96,57 +114,36 @@ function checkEnough(
   );
 }
 
-/**
- * @param record - Of the fit.
- * @param selected - What the options and the length of the record ask for.
- * @param borrowed - Their parents are never dropped.
- * @param ours - Whether the choice is ours and may be thinned.
- * @param designFor - Makes the design of a list.
- * @throws ComputationError `TOO_FEW_SAMPLES`; `RANK_DEFICIENT` with the constituents that cannot be told apart.
- */
-export function* solvable(
-  record: FitRecord,
-  selected: Selection,
-  borrowed: readonly Borrowed[],
-  ours: boolean,
-  designFor: (taken: readonly Constituent[]) => Design,
-): Generator<Progress, Solvable, void> {
-  const parents = new Set(borrowed.map(({ parent }) => parent.name));
-  let selection = selected;
-  let design = designFor(selection.taken);
-  checkEnough(record, selection.taken, design.order.length, ours);
-  let products: Products = {
-    matrix: yield* normalEquations(design, record),
-    size: design.order.length + 1,
+/** The same problem without some constituents, each with the reason why it was left. */
+export function leaveOut(posed: Posed, left: readonly Candidate[], choosing: Choosing): Posed {
+  const names = new Set(left.map(({ name }) => name));
+  const { order } = posed.design;
+  const columns = [...order.keys()].filter((k) => !names.has(ownerOf(order[k] as string)));
+  const { taken, candidates } = posed.selection;
+  const selection = {
+    ...posed.selection,
+    taken: taken.filter(({ name }) => !names.has(name)),
+    candidates: [...candidates.filter(({ name }) => !names.has(name)), ...left],
   };
-  const drop = (left: readonly Candidate[]): void => {
-    const names = new Set(left.map(({ name }) => name));
-    const columns = [...design.order.keys()].filter((k) => {
-      return !names.has((design.order[k] as string).replace(/\.(cos|sin)$/, ''));
-    });
-    products = keep(products, columns);
-    selection = without(selection, left);
-    design = designFor(selection.taken);
-    checkEnough(record, selection.taken, design.order.length, ours);
-  };
+  const products = keep(posed.products, columns, order.length);
+  const without = { design: choosing.designFor(selection.taken), selection, products };
+  checkEnough(choosing, without);
+  return without;
+}
+
+/** Leaves out, or refuses, what stands still at these samples. */
+export function leaveStill(posed: Posed, choosing: Choosing): Posed {
+  const { design, selection, products } = posed;
   const head = headCount(design);
-  const stillness = selection.taken.map(({ name }, j) => ({
+  const shares = selection.taken.map(({ name }, j) => ({
     name,
-    share: smaller(products, head + 2 * j) / record.samples,
+    share: smaller(products, head + 2 * j) / choosing.record.samples,
   }));
-  const still = stillness.filter(({ name, share }) => share < STILL_DROPPED && !parents.has(name));
-  if (ours && still.length > 0) {
-    drop(
-      still.map(({ name }) => ({
-        name,
-        decision: 'left',
-        reason: 'stands still at these samples: they cannot show both of its phases',
-      })),
-    );
-  }
-  const unseen = stillness.find(({ name, share }) => {
-    return share < STILL_REFUSED && selection.taken.some((of) => of.name === name);
-  });
+  const { ours, parents } = choosing;
+  const dropped = shares.filter(
+    ({ name, share }) => ours && share < STILL_DROPPED && !parents.has(name),
+  );
+  const unseen = shares.find((one) => one.share < STILL_REFUSED && !dropped.includes(one));
   if (unseen) {
     throw new ComputationError(
       'RANK_DEFICIENT',
@@ -154,30 +151,84 @@ export function* solvable(
       { pair: ['meanLevel', unseen.name], unknowns: design.order.length },
     );
   }
+  if (dropped.length === 0) return posed;
+  const reason = 'stands still at these samples: they cannot show both of its phases';
+  const left = dropped.map(({ name }): Candidate => ({ name, decision: 'left', reason }));
+  return leaveOut(posed, left, choosing);
+}
+
+function refuse(pair: readonly string[], ratio: number, unknowns: number): never {
+  throw new ComputationError(
+    'RANK_DEFICIENT',
+    `expected columns that can be told apart, got ${pair.join(' and ')} alike in this record`,
+    { pair, ratio, unknowns },
+  );
+}
+
+/** Factors the products, thinning our own choice until it is sound. */
+export function* factored(
+  posed: Posed,
+  blocks: readonly Rows[],
+  choosing: Choosing,
+): Generator<Progress, Solvable, void> {
+  const { ours, parents } = choosing;
+  let now = posed;
   for (;;) {
+    const { design, selection, products } = now;
+    const { size, matrix } = products;
     const count = design.order.length;
-    const scaled = scaleGram(products.matrix, count, count + 1);
-    const { values, weakest } = spectrumOf(scaled);
-    const ratio = (values[0] as number) / (values[count - 1] as number);
-    const pair = weakestPair(design.order, weakest);
-    // The list is in order of expected size: the smaller of the two goes, but never a parent.
-    const name = selection.taken
-      .filter((of) => pair.includes(of.name) && !parents.has(of.name))
-      .pop()?.name;
-    if (ours && ratio < DROPPED && name !== undefined) {
+    const scaled = scaleGram(matrix, count, size);
+    let factor = cholesky(scaled);
+    const weakest = weakestOf(scaled, factor);
+    let { ratio } = weakest;
+    const pair = weakestPair(design.order, weakest.weakest);
+    yield { done: 0, total: 1, stage: 'condition' };
+    if (ours && ratio < DROPPED) {
+      // The list is in order of expected size: the smaller of the two goes, but never a parent.
+      const name = selection.taken
+        .filter((of) => pair.includes(of.name) && !parents.has(of.name))
+        .pop()?.name;
+      if (name === undefined) return refuse(pair, ratio, count);
       const beside = pair.find((one) => one !== name) as string;
       const reason = `cannot be told from ${beside} with these gaps and this sampling`;
-      drop([{ name, decision: 'left', reason, beside }]);
+      now = leaveOut(now, [{ name, decision: 'left', reason, beside }], choosing);
       continue;
     }
-    if (!(ratio >= REFUSED) || (ours && ratio < DROPPED)) {
-      throw new ComputationError(
-        'RANK_DEFICIENT',
-        `expected columns that can be told apart, got ${pair.join(' and ')} alike in this record`,
-        { pair, ratio, unknowns: count },
-      );
+    const squared = ratio >= SQUARED;
+    if (!squared) {
+      factor = yield* triangularFactor(design, blocks, scaled.lengths);
+      ({ ratio } = weakestOf(scaled, factor));
     }
-    const rhs = products.matrix.slice(count * (count + 1), count * (count + 1) + count);
-    return { design, selection, scaled, rhs, condition: Math.sqrt(1 / ratio) };
+    if (!factor || !(ratio >= REFUSED)) return refuse(pair, ratio, count);
+    const sides: Float64Array[] = [];
+    for (let k = count; k < size; k++) sides.push(matrix.slice(k * size, k * size + count));
+    const condition = Math.sqrt(1 / ratio);
+    const solver = squared ? 'cholesky' : 'orthogonal';
+    return { ...now, scaled, factor, solver, sides, condition };
   }
+}
+
+/**
+ * @param selected - What the options and the length of the record ask for.
+ * @param blocks - Rows of the record.
+ * @param choosing - What the choice is made with.
+ * @throws ComputationError `TOO_FEW_SAMPLES`; `RANK_DEFICIENT` with the constituents that cannot be told apart.
+ */
+export function* solvable(
+  selected: Selection,
+  blocks: readonly Rows[],
+  choosing: Choosing,
+): Generator<Progress, Solvable, void> {
+  const design = choosing.designFor(selected.taken);
+  const empty = { matrix: new Float64Array(0), size: 0 };
+  checkEnough(choosing, { design, selection: selected, products: empty });
+  if (!choosing.ours) checkParted(selected.taken, choosing.record);
+  const products = yield* normalEquations(design, blocks);
+  const posed = leaveStill({ design, selection: selected, products }, choosing);
+  return yield* factored(posed, blocks, choosing);
+}
+
+/** The names of the parents of borrowed constituents. */
+export function parentsOf(borrowed: readonly Borrowed[]): ReadonlySet<string> {
+  return new Set(borrowed.map(({ parent }) => parent.name));
 }

@@ -2,10 +2,10 @@
  * Least squares on the normal equations with columns of unit length: Cholesky, and refinement against the data.
  *
  * The Gram matrix of scaled columns has the squared condition of the design; each refinement step multiplies the error
- * by about ε·κ², so two steps leave rounding for κ up to 1e5, beyond which the fit is refused.
+ * by about ε·κ², so two steps leave rounding for κ up to 1e5, beyond which the factor comes from an orthogonal
+ * reduction of the columns themselves (orthogonal.ts).
  * @module
  */
-import { EigenvalueDecomposition, Matrix } from 'ml-matrix';
 
 /** A symmetric matrix with unit diagonal, and the lengths that were divided out. */
 export interface Scaled {
@@ -31,23 +31,68 @@ export function scaleGram(gram: Float64Array, count: number, stride: number): Sc
   return { matrix, lengths, count };
 }
 
-/** Eigenvalues of a scaled Gram matrix, smallest first, and the direction of the smallest. */
-export function spectrumOf({ matrix, count }: Scaled): { values: number[]; weakest: number[] } {
-  // ml-matrix: a small symmetric eigenproblem, outside what this project exists for.
-  const decomposition = new EigenvalueDecomposition(Matrix.from1DArray(count, count, matrix), {
-    assumeSymmetric: true,
-  });
-  const values = decomposition.realEigenvalues;
-  const order = values
-    .map((_, i) => i)
-    .sort((a, b) => (values[a] as number) - (values[b] as number));
-  const weakest = decomposition.eigenvectorMatrix.getColumn(order[0] as number);
-  return { values: order.map((i) => values[i] as number), weakest };
+const TURNS = 200; // of the power iterations: the ratio of eigenvalues is then right to 1e-3 or better
+const SHIFT = 1e-13; // keeps the factor of a singular matrix alive, for its weakest direction
+
+/** A start that no eigenvector is likely to be orthogonal to, the same each time. */
+function startVector(count: number): Float64Array {
+  const x = Float64Array.from({ length: count }, (_, i) => 1 + ((i * 7919) % 101) / 101);
+  normalise(x);
+  return x;
 }
 
-/** Lower Cholesky factor of a positive definite matrix; undefined where it is not. */
-export function cholesky({ matrix, count }: Scaled): Float64Array | undefined {
+/** Divides by the length, and gives it. */
+function normalise(x: Float64Array): number {
+  let sum = 0;
+  for (const value of x) sum += value * value;
+  const length = Math.sqrt(sum);
+  for (let i = 0; i < x.length; i++) x[i] = (x[i] as number) / length;
+  return length;
+}
+
+function largestEigenvalue({ matrix, count }: Scaled): number {
+  let x = startVector(count);
+  let largest = 1;
+  for (let turn = 0; turn < TURNS; turn++) {
+    const next = new Float64Array(count);
+    for (let i = 0; i < count; i++) {
+      let sum = 0;
+      for (let j = 0; j < count; j++) sum += (matrix[i * count + j] as number) * (x[j] as number);
+      next[i] = sum;
+    }
+    largest = normalise(next);
+    x = next;
+  }
+  return largest;
+}
+
+/**
+ * Smallest eigenvalue over largest of a scaled Gram matrix, and the direction of the smallest, by power iterations.
+ *
+ * @param scaled - With unit diagonal.
+ * @param known - Its lower triangular factor; undefined: there is none, the ratio is 0.
+ */
+export function weakestOf(
+  scaled: Scaled,
+  known: Float64Array | undefined,
+): { ratio: number; weakest: Float64Array } {
+  const { count } = scaled;
+  let factor = known;
+  for (let shift = SHIFT; !factor; shift *= 100) factor = cholesky(scaled, shift);
+  const weakest = startVector(count);
+  let inverse = 1;
+  for (let turn = 0; turn < TURNS; turn++) {
+    solveInPlace(factor, count, weakest);
+    inverse = normalise(weakest);
+  }
+  return { ratio: known ? 1 / inverse / largestEigenvalue(scaled) : 0, weakest };
+}
+
+/** Lower Cholesky factor of a positive definite matrix, `shift` added to its diagonal; undefined where it is not. */
+export function cholesky({ matrix, count }: Scaled, shift = 0): Float64Array | undefined {
   const factor = Float64Array.from(matrix);
+  for (let i = 0; i < count; i++)
+    factor[i * (count + 1)] = (factor[i * (count + 1)] as number) + shift;
   for (let j = 0; j < count; j++) {
     for (let i = j; i < count; i++) {
       let sum = factor[i * count + j] as number;

@@ -5,7 +5,7 @@
 import type { Constituent } from '@staithe/constituents';
 import type { Design } from './design.js';
 import type { LineNoise } from './noise.js';
-import type { FitRecord } from './record.js';
+import type { RecordSummary } from './record.js';
 import { closePairs } from './select.js';
 import type { FitWarning } from './types.js';
 
@@ -20,18 +20,17 @@ const FEW_BINS = 4;
  * @param condition - Of the design.
  * @param noise - Beside each line.
  * @param asked - The caller's list of constituents; empty where the choice was ours.
- * @param spectral - Whether the noise was taken from the residual's spectrum.
  */
 export function warningsOf(
-  record: FitRecord,
+  record: RecordSummary,
   design: Design,
   condition: number,
   noise: readonly LineNoise[],
   asked: readonly Constituent[],
-  spectral: boolean,
 ): FitWarning[] {
-  const { length } = record.values;
-  const missing = length - record.samples;
+  const { missing } = record;
+  const length = record.samples + missing;
+  const spectral = noise.some(({ bins }) => bins > 0);
   const few = spectral ? noise.filter(({ bins }) => bins < FEW_BINS).length : 0;
   const list: (FitWarning | false)[] = [
     record.days < MONTH && {
@@ -58,5 +57,5 @@ export function warningsOf(
       message: `lines of degree 3 left out for ${weak.join(', ')}: degree 2 is under 5 % of its maximum at this latitude`,
     });
   }
-  return [...list.filter((w): w is FitWarning => w !== false), ...closePairs(asked, record.days)];
+  return [...list.filter((w): w is FitWarning => w !== false), ...closePairs(asked, record)];
 }

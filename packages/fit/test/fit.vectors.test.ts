@@ -170,6 +170,33 @@ describe('fits of real records', () => {
     });
   });
 
+  it.each([
+    ['sewells-point-observed-1929', { M2: [0.367, 50.1] }],
+    ['sewells-point-observed-1935', { M2: [0.365, 49.2], K1: [0.05, 200.1] }],
+    ['sewells-point-observed-1940', { M2: [0.36, 49.8] }],
+  ])('%s reproduces the independent fit of its source', (id, wanted) => {
+    const { constituents } = fitHarmonics(hourlySeries(id), OLD).constants;
+    const names = Object.keys(wanted);
+    const rows = names.map((name) => constituents.find((c) => c.name === name));
+    const seen = expectWithin(
+      rows.map((row) => row?.amplitude as number),
+      Object.values(wanted).map(([amplitude]) => amplitude as number),
+      { abs: 3e-3 },
+    );
+    expectAngleWithin(
+      rows.map((row) => row?.phaseLag as number),
+      Object.values(wanted).map(([, phaseLag]) => phaseLag as number),
+      { abs: 1 },
+    );
+    recordAccuracy(id, {
+      capability: 'amplitudes fitted to a year',
+      compared: `${names.join(' and ')} of an independent fit`,
+      ...seen,
+      tolerance: 3e-3,
+      unit: 'm',
+    });
+  });
+
   it('has error bars of the size by which neighbouring years differ', () => {
     // The sea itself changes from year to year: the scatter of M2, K1, O1 over nine years against the stated sigma.
     const record = hourlySeries('la-jolla-observed');
