@@ -7,8 +7,8 @@
  * block: mean of the noise within about 1.5/L, less the share that the fit took out at each line there, K at its distance.
  * @module
  */
-import { degreesToRadians, HOUR } from '@staithe/core';
-import { sin } from '@staithe/core/trig';
+import { degreesToRadians, HOUR, type Progress } from '@staithe/core';
+import { sin, sinCosInto } from '@staithe/core/trig';
 import { shownSpeed, usualStep } from './cadence.js';
 import type { Design } from './design.js';
 import type { LineNoise } from './noise.js';
@@ -28,6 +28,7 @@ export interface Blocks {
   readonly taper: Float64Array;
 }
 
+const SLICE = 65536; // values between two yields: about a millisecond
 const LEAST = 0.2; // share left at a line, below which it is not divided further
 const REGULAR = 1e-3; // of a step
 const THINNEST = 5; // places a sample: beyond, straight lines would be most of the source
@@ -35,27 +36,36 @@ const LUNAR_DAY = 24.8412 * HOUR;
 // L of n samples show 1/Σ K² = n/(0.587·L) independent bins: 0.587 is the integral of the squared correlation of the taper.
 const TAPER = 0.5866;
 
-/** Writes one series of blocks at the samples that take part. */
-export function drawBlocks(
+/**
+ * Draws one series of blocks.
+ *
+ * @param blocks - Of {@link blocksOf}.
+ * @param kept - Indices of the samples that take part.
+ * @param random - Moves on.
+ * @param out - Written to, at the samples that take part.
+ */
+export function* drawBlocks(
   { source, places, taper }: Blocks,
   kept: Int32Array,
   random: RandomState,
   out: Float64Array,
-): void {
+): Generator<Progress, void, void> {
   const length = taper.length;
   const hop = length / 2;
   const n = source.length;
   const series = new Float64Array((places[places.length - 1] as number) + 1);
   const offset = Math.floor(hop * nextShare(random));
   for (let start = offset - length; start < series.length; start += hop) {
-    let from = Math.floor(n * nextShare(random));
-    const end = Math.min(length, series.length - start);
-    for (let i = 0; i < end; i++) {
-      const at = start + i;
-      if (at >= 0) {
-        series[at] = (series[at] as number) + (taper[i] as number) * (source[from] as number);
+    const from = Math.floor(n * nextShare(random));
+    for (let slice = Math.max(0, -start); slice < length; slice += SLICE) {
+      const to = Math.min(length, slice + SLICE, series.length - start);
+      let k = (from + slice) % n;
+      for (let i = slice; i < to; i++) {
+        const at = start + i;
+        series[at] = (series[at] as number) + (taper[i] as number) * (source[k] as number);
+        if (++k === n) k = 0;
       }
-      if (++from === n) from = 0;
+      yield { done: Math.max(0, start), total: series.length, stage: 'blocks' };
     }
   }
   for (let i = 0; i < kept.length; i++) {
@@ -63,11 +73,12 @@ export function drawBlocks(
   }
 }
 
+const sine = (x: number): number => sin(x - 2 * Math.PI * Math.round(x / (2 * Math.PI)));
+
 /** Σ e^{ixt} over n samples about their middle, x in radians. */
 function dirichlet(n: number, x: number): number {
-  const turned = x - 2 * Math.PI * Math.round(x / (2 * Math.PI));
-  const below = sin(turned / 2);
-  return Math.abs(below) < 1e-12 ? n : sin((n * turned) / 2) / below;
+  const below = sine(x / 2);
+  return Math.abs(below) < 1e-12 ? n : sine((n * x) / 2) / below;
 }
 
 /** Window of the taper: |Σ taper·e^{ixt}|² over samples times Σ taper². */
@@ -121,29 +132,30 @@ function sourceOf(
   step: number,
   { values, kept }: Whitened,
 ): Pick<Blocks, 'source' | 'step' | 'places'> {
-  const at = Float64Array.from(kept, (i) => times[i] as number);
-  const cadence = step || wholeStep(at);
-  if (cadence === 0) {
-    const places = Float64Array.from(kept.keys());
-    return {
-      source: Float64Array.from(kept, (i) => values[i] as number),
-      step: usualStep(at),
-      places,
-    };
+  const count = kept.length;
+  const at = new Float64Array(count);
+  const own = new Float64Array(count);
+  const places = new Float64Array(count);
+  for (let i = 0; i < count; i++) {
+    at[i] = times[kept[i] as number] as number;
+    own[i] = values[kept[i] as number] as number;
+    places[i] = i;
   }
-  const places = at.map((t) => Math.round((t - (at[0] as number)) / cadence));
-  const source: number[] = [];
-  let last = 0;
-  kept.forEach((index, i) => {
-    const value = values[index] as number;
-    const gap = i > 0 ? ((places[i] as number) - (places[i - 1] as number)) * cadence : cadence;
-    const kept = gap - LUNAR_DAY * Math.floor(gap / LUNAR_DAY);
-    const steps = Math.max(1, Math.round(kept / cadence));
-    for (let k = 1; k < steps; k++) source.push(last + ((value - last) * k) / steps);
-    source.push(value);
-    last = value;
-  });
-  return { source: Float64Array.from(source), step: cadence, places };
+  const cadence = step || wholeStep(at);
+  if (cadence === 0) return { source: own, step: usualStep(at), places };
+  for (let i = 0; i < count; i++) {
+    places[i] = Math.round(((at[i] as number) - (at[0] as number)) / cadence);
+  }
+  const source = new Float64Array((places[count - 1] as number) + 1);
+  let size = 0;
+  for (let i = 0; i < count; i++) {
+    const gap = i > 0 ? ((at[i] as number) - (at[i - 1] as number)) % LUNAR_DAY : 0;
+    const steps = Math.max(1, Math.round(gap / cadence));
+    const last = own[i - 1] ?? 0;
+    const rise = (own[i] as number) - last;
+    for (let k = 1; k <= steps; k++) source[size++] = last + (rise * k) / steps;
+  }
+  return { source: source.subarray(0, size), step: cadence, places };
 }
 
 /**
@@ -162,7 +174,11 @@ export function blocksOf(
   const bins = noise.map((line) => line.bins).sort((a, b) => a - b);
   const typical = bins[bins.length >> 1] as number;
   const half = found.source.length / Math.max(4, 2 * TAPER * typical);
-  const length = 2 * Math.max(1, Math.round(half));
-  const taper = Float64Array.from({ length }, (_, i) => sin((Math.PI * (i + 0.5)) / length));
+  const taper = new Float64Array(2 * Math.max(1, Math.round(half)));
+  const pair = new Float64Array(2);
+  for (let i = 0; i < taper.length; i++) {
+    sinCosInto((Math.PI * (i + 0.5)) / taper.length, pair);
+    taper[i] = pair[0] as number;
+  }
   return { ...found, taper };
 }

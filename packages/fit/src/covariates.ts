@@ -100,11 +100,25 @@ function makeReader(series: Series): (t: number) => number {
   };
 }
 
-function columnOf(series: Series, lag: number, record: FitRecord, path: string): Float64Array {
+/** From the stamp of a sample to the middle of what it is the mean of, milliseconds. */
+function middleAfter({ series: { sampling } }: FitRecord): number {
+  if (!sampling) return 0;
+  return { start: 0.5, middle: 0, end: -0.5 }[sampling.stamp] * sampling.meanOver;
+}
+
+function columnOf(
+  { series: given }: Covariate,
+  series: Series,
+  lag: number,
+  record: FitRecord,
+  path: string,
+): Float64Array {
   const read = makeReader(series);
+  // Values that come with the samples are of the same stretch of time.
+  const delay = given ? middleAfter(record) : 0;
   return record.times.map((t, i) => {
     if (Number.isNaN(record.values[i])) return 0;
-    const value = read(t - lag);
+    const value = read(t + delay - lag);
     if (Number.isFinite(value)) return value;
     const got = `a gap ${lag === 0 ? '' : `or an end ${lag} ms before `}at the sample of ${formatInstant(t)}`;
     throw new InputError(
@@ -137,6 +151,7 @@ export function readCovariates(
     const series = seriesOf(covariate, path, record);
     for (const lag of readLags(covariate, path)) {
       const column = columnOf(
+        covariate,
         series,
         lag,
         record,

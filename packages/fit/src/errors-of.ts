@@ -2,32 +2,9 @@
  * Error bars: the covariance of the coefficients from the noise that each line feels.
  * @module
  */
-import type { Progress } from '@staithe/core';
-import { degreesToRadians, HOUR } from '@staithe/core';
 import { type Design, headCount } from './design.js';
-import { type LineNoise, noiseBesideAll, residualOf } from './noise.js';
-import type { FitRecord } from './record.js';
+import type { LineNoise } from './noise.js';
 import { discFactor } from './student.js';
-
-/** Noise of the mean level first, then of each fitted constituent. */
-export function* noiseOf(
-  design: Design,
-  record: FitRecord,
-  residuals: Float64Array,
-  errorModel: 'residual-spectrum' | 'independent',
-  variance: number,
-): Generator<Progress, LineNoise[], void> {
-  const { basis, fitted } = design;
-  if (errorModel === 'independent') {
-    return Array.from({ length: fitted + 1 }, () => ({ density: variance, bins: 0 }));
-  }
-  const residual = residualOf(record.times, record.step, residuals);
-  const speeds = Array.from(basis.speeds, (speed) => (speed * HOUR) / degreesToRadians(1));
-  const lines = [0, ...speeds.slice(0, fitted)];
-  const found = noiseBesideAll(residual, lines, [0, ...speeds]);
-  yield { done: lines.length, total: lines.length, stage: 'noise beside each line' };
-  return found.map((noise) => (noise.bins > 0 ? noise : { density: variance, bins: 0 }));
-}
 
 /** Covariance of the coefficients: (AᵀA)⁻¹ between the noise of the two columns. */
 export function covarianceOf(

@@ -10,7 +10,7 @@ import { readCovariates } from './covariates.js';
 import { estimate } from './estimate.js';
 import { outcome } from './outcome.js';
 import { pose } from './problem.js';
-import { checkKeys, readCurve, readRedraw } from './read-options.js';
+import { checkKeys, checkStepsSeen, readCurve, readRedraw, readSteps } from './read-options.js';
 import { readRecord } from './record.js';
 import { rowsOf } from './rows.js';
 import type { FitOptions, RecordFit } from './types.js';
@@ -24,6 +24,11 @@ export function* fitSteps(
   const record = readRecord(series, options.weights);
   readCurve(options);
   readRedraw(options, record.step > 0);
+  checkStepsSeen(
+    readSteps(options.steps, record.from, record.to),
+    record.times,
+    (i) => !Number.isNaN(record.values[i]),
+  );
   const covariates = readCovariates(options.covariates, record);
   const problem = pose(options, record, covariates.columns, record.series.sampling);
   const found = yield* estimate(problem, [rowsOf(record, covariates.values)]);

@@ -81,3 +81,11 @@ export type {
   SideLineEstimate,
   SideLineResult,
 } from './types.js';
+export {
+  fitTurningPoints,
+  fitTurningPointsAsync,
+  type TurningPointFit,
+  type TurningPointOptions,
+  type TurningTimes,
+} from './turning-points.js';
+export type { TurningPoint } from './turning/read.js';

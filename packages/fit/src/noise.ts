@@ -245,26 +245,6 @@ export function densityFrom(bins: NoiseBins, sums: Float64Array, samples: number
 }
 
 /**
- * @param residual - Of the fit.
- * @param wanted - Speeds of the lines asked for, degrees per hour; 0 for the mean level. They share one slope.
- * @param lines - Speeds of all fitted and borrowed lines, 0 among them.
- * @returns In the order asked for; no bins where the fit left no evidence near the line.
- */
-export function noiseBesideAll(
-  residual: Residual,
-  wanted: readonly number[],
-  lines: readonly number[],
-): LineNoise[] {
-  const bins = binsBeside(residual.runs, wanted, lines);
-  return densityFrom(bins, sumsAt(residual, bins.speeds), residual.samples);
-}
-
-/** {@link noiseBesideAll} of one line alone. */
-export function noiseBeside(residual: Residual, line: number, lines: readonly number[]): LineNoise {
-  return noiseBesideAll(residual, [line], lines)[0] as LineNoise;
-}
-
-/**
  * The residual as the periodogram takes it.
  *
  * @param times - Instants.

@@ -62,7 +62,8 @@ export function weightsOf(
 ): ResistantWeights | undefined {
   const curve = readCurve(options);
   if (!resistant || !curve) return undefined;
-  const { trust, scales } = resistant;
+  const { scales } = resistant;
+  const trust = resistant.shown ?? resistant.trust;
   const count = (under: (w: number) => boolean): number =>
     trust.reduce((n, w) => (under(w) ? n + 1 : n), 0);
   return {
@@ -110,6 +111,7 @@ export function* outcome(
     ? yield* redrawnCovariance(found, redraw, noise)
     : covarianceOf(design, inverse, noise);
   const weights = weightsOf(problem, found);
+  const shown = found.observed?.[0] ?? residual;
   const first = headCount(design) - design.given;
   return {
     ...assemble({
@@ -120,9 +122,9 @@ export function* outcome(
       solution,
       covariance,
       noise,
-      residual: residualSize(residual, record.times),
+      residual: residualSize(shown, record.times),
     }),
-    residuals: { ...record.series, values: residual },
+    residuals: { ...record.series, values: shown },
     ...(covariates.length > 0
       ? { covariates: covariateResults(covariates, first, solution, covariance) }
       : {}),

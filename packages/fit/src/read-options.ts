@@ -4,6 +4,7 @@
  */
 import { type Constituent, type ConstituentName, constituent } from '@staithe/constituents';
 import {
+  ComputationError,
   describe,
   formatInstant,
   InputError,
@@ -91,6 +92,29 @@ export function readSteps(steps: FitOptions['steps'], from: Instant, to: Instant
       );
     })
     .sort((a, b) => a - b);
+}
+
+/**
+ * Refuses steps that no sample parts: nothing tells how much each of them is.
+ *
+ * @param steps - In order.
+ * @param times - Of the record.
+ * @param present - Whether a time takes part.
+ */
+export function checkStepsSeen(
+  steps: readonly Instant[],
+  times: Float64Array,
+  present: (i: number) => boolean,
+): void {
+  steps.slice(1).forEach((later, i) => {
+    const earlier = steps[i] as Instant;
+    if (times.some((t, k) => t >= earlier && t < later && present(k))) return;
+    throw new ComputationError(
+      'RANK_DEFICIENT',
+      `expected a sample between any two of options.steps, got none from ${formatInstant(earlier)} to ${formatInstant(later)}`,
+      { pair: [`step[${i}]`, `step[${i + 1}]`] },
+    );
+  });
 }
 
 /** A closed choice. */

@@ -59,7 +59,13 @@ function readWeights(
       refuse('OUT_OF_RANGE', `options.weights[${i}]`, 'a finite number, 0 or more', weight);
     }
   }
-  return Float64Array.from(weights);
+  // Their unit says nothing: the largest first, so that none overflows, then a mean of 1 over those that count.
+  const largest = Array.from(weights).reduce((most, weight) => Math.max(most, weight), 0);
+  if (largest === 0) return new Float64Array(count);
+  const scaled = Float64Array.from(weights, (weight) => weight / largest);
+  const counted = scaled.filter((weight) => weight > 0);
+  const mean = counted.reduce((sum, weight) => sum + weight, 0) / counted.length;
+  return scaled.map((weight) => weight / mean);
 }
 
 /**

@@ -26,7 +26,10 @@ export interface Redraw {
   readonly draws: number;
 }
 
-const BATCH = 32; // draws that share a pass over the design
+const MOST_AT_ONCE = 32; // draws that share a pass over the design
+const MOST_VALUES = 4194304; // that they may hold, 32 MB
+
+const STAGE = 'redrawn residuals';
 
 /** Writes noise into two series. */
 type Draw = (first: Float64Array, second: Float64Array) => Generator<Progress, void, void>;
@@ -52,9 +55,15 @@ function* covarianceOfDraws(
   const [rows] = blocks as readonly [Rows];
   const count = design.order.length;
   const sum = new Float64Array(count * count);
-  const sides = Array.from({ length: BATCH }, () => new Float64Array(rows.times.length));
-  for (let done = 0; done < draws; done += BATCH) {
-    const wanted = Math.min(BATCH, draws - done);
+  const length = rows.times.length;
+  const fours = Math.max(1, Math.floor(MOST_VALUES / (4 * length)));
+  const sides: Float64Array[] = [];
+  while (sides.length < Math.min(MOST_AT_ONCE, 4 * fours)) {
+    sides.push(new Float64Array(length));
+    yield { done: 0, total: draws, stage: STAGE };
+  }
+  for (let done = 0; done < draws; done += sides.length) {
+    const wanted = Math.min(sides.length, draws - done);
     for (let k = 0; k < wanted; k += 2) {
       yield* draw(sides[k] as Float64Array, sides[k + 1] as Float64Array);
     }
@@ -62,7 +71,7 @@ function* covarianceOfDraws(
     const projections = yield* projectionsOf(design, rows, batch);
     for (const projection of projections.slice(0, wanted)) {
       addSquare(sum, solveScaled(factor, scaled, projection));
-      yield { done, total: draws, stage: 'redrawn residuals' };
+      yield { done, total: draws, stage: STAGE };
     }
   }
   for (let i = 0; i < count; i++) {
@@ -125,10 +134,10 @@ function* byBlocks(
   const [{ step, times }] = found.blocks as readonly [Rows];
   const { kept } = whitened;
   const blocks = blocksOf(times, step, whitened, noise);
+  yield { done: 0, total: draws, stage: STAGE };
   const draw: Draw = function* (first, second) {
-    drawBlocks(blocks, kept, random, first);
-    yield { done: 0, total: draws, stage: 'blocks' };
-    drawBlocks(blocks, kept, random, second);
+    yield* drawBlocks(blocks, kept, random, first);
+    yield* drawBlocks(blocks, kept, random, second);
   };
   const covariance = yield* covarianceOfDraws(found, draw, draws);
   const scale = scalesOf(found, noise, covariance, shownBy(design, blocks));
@@ -151,6 +160,7 @@ export function* redrawnCovariance(
   noise: readonly LineNoise[],
 ): Generator<Progress, Float64Array, void> {
   const whitened = whitenedOf(found);
+  yield { done: 0, total: draws, stage: STAGE };
   const random = seeded(seed);
   const redrawn = by === 'phases' ? byPhases : byBlocks;
   return yield* redrawn(found, whitened, noise, random, draws);

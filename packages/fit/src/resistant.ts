@@ -24,6 +24,8 @@ export interface Curve {
 export interface Resistant {
   /** From 0 to 1 for each time (NaN where no sample takes part); 1: as good as any. */
   readonly trust: Float64Array;
+  /** What is told of each sample: the least that it was trusted, before it was put back where its neighbours say. */
+  readonly shown?: Float64Array | undefined;
   /** Of each right-hand side, metres: 1.4826 times the median size of its residuals. */
   readonly scales: readonly number[];
   /** (mean w / mean ψ′)²: what the curve adds to the variance of a coefficient (P. Huber 1981, ch. 7). */

@@ -26,8 +26,3 @@ export function rowsOf(
 ): Rows {
   return { times, step, sides: [values], weights, given };
 }
-
-/** The same rows with other right-hand sides; times that took no part take none. */
-export function withSides(rows: Rows, sides: readonly Float64Array[]): Rows {
-  return { ...rows, sides };
-}

@@ -78,7 +78,8 @@ export function weakestOf(
 ): { ratio: number; weakest: Float64Array } {
   const { count } = scaled;
   let factor = known;
-  for (let shift = SHIFT; !factor; shift *= 100) factor = cholesky(scaled, shift);
+  for (let shift = SHIFT; !factor && shift < 1; shift *= 100) factor = cholesky(scaled, shift);
+  if (!factor) return { ratio: 0, weakest: new Float64Array(count).fill(1) };
   const weakest = startVector(count);
   let inverse = 1;
   for (let turn = 0; turn < TURNS; turn++) {

@@ -20,6 +20,7 @@ import { runsOf, windowOf } from './window.js';
 const LEFT = 0.3; // share that the fit must have left in a bin
 const REACH = 10; // turns of the record within which a line is counted
 const SEEN = 0.25; // share of the pairs at a lag that must be there; fewer are not made up for in full
+const SLICE = 65536; // bins between two yields
 const STAGE = 'spectrum of the residual';
 
 /** A spectrum to draw from. */
@@ -27,6 +28,9 @@ export interface Spectrum {
   /** Of the waves at speeds from 0 to half a turn a step, for a complex transform of which the real part is wanted. */
   readonly amplitudes: Float64Array;
   readonly turns: Turns;
+  /** Buffers of the transform, written over at each draw. */
+  readonly re: Float64Array;
+  readonly im: Float64Array;
 }
 
 /** A line as the samples show it. */
@@ -99,7 +103,7 @@ function* refill(
     const value = left < LEFT ? nearest.density : (power[k] as number) / left;
     power[k] = value;
     power[(n - k) % n] = value;
-    if (k % 256 === 0) yield { done: k, total: n / 2, stage: STAGE };
+    if (k % 64 === 0) yield { done: k, total: n / 2, stage: STAGE };
   }
 }
 
@@ -158,10 +162,11 @@ export function* spectrumOf(
   const degrees = (360 * HOUR) / (length * step); // an hour that a bin spans
   const speeds = lineSpeeds(design).map((speed) => shownSpeed(speed, step));
   const turn = length / covered;
-  const runs = runsOf(
-    Float64Array.from(kept, (i) => (i * step) / HOUR),
-    step / HOUR,
-  );
+  const hours = new Float64Array(kept.length);
+  for (let i = 0; i < hours.length; i++) hours[i] = ((kept[i] as number) * step) / HOUR;
+  yield { done: 1, total: 1, stage: STAGE };
+  const runs = runsOf(hours, step / HOUR);
+  yield { done: 1, total: 1, stage: STAGE };
   const leftOf = shareLeftBy(windowOf(runs, REACH * turn * degrees), speeds);
   const lines = linesOf(design, noise, speeds, (speed) => speed / degrees, turn);
   yield* refill(power, lines, (bin) => leftOf(bin * degrees));
@@ -170,9 +175,10 @@ export function* spectrumOf(
   }
   const amplitudes = new Float64Array(half + 1);
   for (let k = 0; k <= half; k++) {
-    const waves = k % half === 0 ? 2 : 4; // each of the others stands for its mirror too
-    amplitudes[k] = Math.sqrt((waves * (power[k] as number)) / length);
+    amplitudes[k] = Math.sqrt((4 * (power[k] as number)) / length); // each stands for its mirror too
+    if (k % SLICE === SLICE - 1) yield { done: k, total: half, stage: STAGE };
   }
-  yield { done: 1, total: 1, stage: STAGE };
-  return { amplitudes, turns };
+  for (const alone of [0, half])
+    amplitudes[alone] = Math.sqrt((2 * (power[alone] as number)) / length);
+  return { amplitudes, turns, re: power, im: new Float64Array(length) };
 }

@@ -29,7 +29,9 @@ import { type Footing, rowsOn, type StatedSigmas } from './turning/footing.js';
 import { prepare, sharesIn } from './turning/prepare.js';
 import { readPoints, type ReadPoints, type TurningPoint } from './turning/read.js';
 import type { Book } from './turning/turn.js';
-import type { FitOptions, RecordFit } from './types.js';
+import type { FitOptions, FitWarning, RecordFit } from './types.js';
+
+const MANY = 0.02; // of the points, astray
 
 /** Options of a fit of high and low waters. @public */
 export interface TurningPointOptions extends FitOptions {
@@ -99,6 +101,13 @@ function checkTurns({ level }: ReadPoints, { astray }: Footing): void {
   );
 }
 
+/** Times that belong to no turn, where they are many. */
+function strayWarnings({ astray }: TurningTimes, points: number): FitWarning[] {
+  if (astray.length <= MANY * points) return [];
+  const message = `${astray.length} of ${points} times lie near no turn of the fitted curve: noise makes turns of its own, the list of constituents lacks some, or the times are wrong`;
+  return [{ code: 'TIMES_ASTRAY', message }];
+}
+
 /** The times, by the slope that the curve has where its turning point was awaited. */
 function timingOf(
   { record: { times }, level, kinds }: ReadPoints,
@@ -149,8 +158,11 @@ function* steps(
   const { borrowed, freed } = problem;
   const residual = residualSize(high, record.times);
   const first = headCount(solved.design) - solved.design.given;
+  const timing = timingOf(points, found, footing);
+  const made = { options, record, borrowed, solved, solution, covariance, noise, residual };
+  const { warnings, ...rest } = assemble(made);
   return {
-    ...assemble({ options, record, borrowed, solved, solution, covariance, noise, residual }),
+    ...rest,
     residuals: { ...record.series, values: high },
     ...(covariates.columns.length > 0
       ? { covariates: covariateResults(covariates.columns, first, solution, covariance) }
@@ -158,8 +170,9 @@ function* steps(
     ...(freed.length > 0
       ? { sideLines: sideLineResults(freed, pairReader(found, covariance)) }
       : {}),
-    timing: timingOf(points, found, footing),
+    timing,
     sigmas: footing.sigmas,
+    warnings: [...warnings, ...strayWarnings(timing, record.times.length)],
   };
 }
 
@@ -177,7 +190,9 @@ function* steps(
  * @throws InputError as `fitHarmonics`; `NOT_RISING`, `NOT_FINITE`, `OUT_OF_RANGE`, `WRONG_TYPE`, `UNKNOWN_CHOICE` with the
  *   path of a point or an option. ComputationError as `fitHarmonics`.
  * @example
- * fitTurningPoints(points, { constituents: ['M2', 'S2'] }).constants.constituents[0]?.name; // 'M2'
+ * const points = Array.from({ length: 60 }, (_, i) => ({ time: (2 + 6 * i) * 3600000, height: i % 2 ? 1 : 3 }));
+ * const { constants } = fitTurningPoints(points, { constituents: ['S2'], nodalModel: 'none' });
+ * constants.constituents[0]?.phaseLag.toFixed(6); // '60.000000'
  * @public
  */
 export function fitTurningPoints(
@@ -195,7 +210,8 @@ export function fitTurningPoints(
  * @returns The same; rejects with `signal.reason` after an abort.
  * @throws As there, by rejection.
  * @example
- * (await fitTurningPointsAsync(points, { constituents: ['M2', 'S2'] })).timing.contrary; // []
+ * const points = Array.from({ length: 60 }, (_, i) => ({ time: (2 + 6 * i) * 3600000, height: i % 2 ? 1 : 3 }));
+ * (await fitTurningPointsAsync(points, { constituents: ['S2'] })).constants.meanLevel.toFixed(6); // '2.000000'
  * @public
  */
 export function fitTurningPointsAsync(

@@ -117,7 +117,8 @@ export interface FitWarning {
     | 'WEAK_DEGREE_2'
     | 'FEW_SPECTRUM_BINS'
     | 'CLOSE_PAIR'
-    | 'ERRORS_PROVISIONAL';
+    | 'ERRORS_PROVISIONAL'
+    | 'TIMES_ASTRAY';
   readonly message: string;
 }
 

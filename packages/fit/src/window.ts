@@ -51,7 +51,7 @@ export function runsOf(hours: Float64Array, step: number): SampleRun[] {
 }
 
 /** Samples of all runs. */
-export function samplesOf(runs: readonly SampleRun[]): number {
+function samplesOf(runs: readonly SampleRun[]): number {
   return runs.reduce((sum, { count }) => sum + count, 0);
 }
 
@@ -85,10 +85,10 @@ function dirichlet(count: number, x: number): number {
  * @param reach - Degrees per hour; less where that would be more than 8192 distances.
  */
 export function windowOf(runs: readonly SampleRun[], reach: number): SpectralWindow {
-  const ends = runs.map(({ middle, count, step }) => [
+  const ends = runs.map(({ middle, count, step }): [number, number] => [
     middle - (count * step) / 2,
     middle + (count * step) / 2,
-  ]) as [number, number][];
+  ]);
   const from = ends.reduce((least, [start]) => Math.min(least, start), Infinity);
   const to = ends.reduce((most, [, end]) => Math.max(most, end), -Infinity);
   const centre = (from + to) / 2;

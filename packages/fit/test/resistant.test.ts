@@ -53,7 +53,7 @@ describe('La Jolla 2012', () => {
     expect(setAside).toBeLessThan(spikes.length + 24);
   });
 
-  it('shows its mean level where all spikes go up, and huber most of it', () => {
+  it('shows its mean level where all spikes go up, with either curve', () => {
     const list: FitOptions = { ...OLD, constituents: SHORT_LIST };
     const truth = fitHarmonics(clean, list);
     const { series, spikes } = spoil(clean, { seed: 1, oneSided: true, stuck: false });
@@ -67,9 +67,8 @@ describe('La Jolla 2012', () => {
     const huber = run({ weighting: 'resistant', resistant: { curve: 'huber' } });
     const { scale, weights, curve, cutoff } = weightsOf(huber);
     expect({ curve, cutoff }).toEqual({ curve: 'huber', cutoff: 1.345 });
-    // What pulls with a tenth of the samples at the cutoff's strength, against the rest: P. Huber (1964).
-    const pull = (0.1 * 1.345 * scale) / (0.9 * 0.82);
-    expectWithin(rise(huber), pull, { rel: 0.25 }, 'huber');
+    // By itself huber would keep (0.1·1.345·scale)/(0.9·0.82) of the rise, 8 mm: what it doubts is put back first.
+    expectWithin(rise(huber), 0, { abs: 1e-3 }, 'huber');
     // Cutoff over size, and never 0.
     const sizes = spikes.map((i) => Math.abs(huber.residuals.values[i] as number) / scale);
     expectWithin(

@@ -228,7 +228,7 @@ function drawPanel(
 }
 
 /** The picture without its frame. */
-export function drawEllipses(fit: ShownCurrents, options: EllipsesOptions): Picture {
+function drawEllipses(fit: ShownCurrents, options: EllipsesOptions): Picture {
   const { width, theme } = readOptions(options);
   const panels = panelsOf(groupCurrents(fit), ({ own }) => own.major, isFaint);
   const { constants, principalAxis } = fit;

@@ -56,7 +56,7 @@ function componentConstants(side: 'east' | 'north'): HarmonicConstants {
 }
 
 /** Two months, every half hour, with noise that lasts some hours and a gap. */
-export function inventedStream(): { readonly east: Series; readonly north: Series } {
+function inventedStream(): { readonly east: Series; readonly north: Series } {
   const random = seeded(20310301);
   const noise = { east: 0, north: 0 };
   const sides = { east: new Float64Array(COUNT), north: new Float64Array(COUNT) };

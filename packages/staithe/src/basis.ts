@@ -14,5 +14,6 @@ export {
   gridCount,
   makeStretcher,
   rankUpdate,
+  slopeColumnsInto,
   tiles,
 } from '@staithe/basis/kernels';

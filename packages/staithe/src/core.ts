@@ -6,6 +6,7 @@ export type {
   AbortSignalLike,
   ArgumentModel,
   ComputationErrorCode,
+  CurrentConstants,
   Degrees,
   ErrorDetails,
   Finding,

@@ -5,6 +5,7 @@
 export type {
   CautionKind,
   DialsOptions,
+  EllipsesOptions,
   FlaggedRun,
   FoldedRecordInput,
   FoldedRecordOptions,
@@ -22,6 +23,8 @@ export type {
   ReportWindows,
   ResidualRasterInput,
   Rung,
+  ShownCurrents,
+  ShownEllipse,
   SkyDay,
   WeekInput,
   WindowsInput,
@@ -29,9 +32,13 @@ export type {
 } from '@staithe/report';
 export {
   caution,
+  comparisonCsv,
+  comparisonText,
   constantsCsv,
   constantsText,
+  currentsText,
   dialsSvg,
+  ellipsesSvg,
   foldedRecordSvg,
   heightsCsv,
   levelsLadderSvg,

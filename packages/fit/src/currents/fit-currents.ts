@@ -68,7 +68,8 @@ function* currentSteps(
     const solution = solutions[k] as Float64Array;
     const covariance = covarianceOf(design, inverse, noise);
     const constants = constantsOf(design, solution, covariance, noise);
-    sides.push({ own, residual, noise, solution, covariance, constants });
+    const shown = found.observed?.[k] ?? residual;
+    sides.push({ own, residual, shown, noise, solution, covariance, constants });
   }
   const [east, north] = sides as [Side, Side];
   const coherence =
@@ -85,7 +86,7 @@ function* currentSteps(
   );
   const names = ['mean', ...design.basis.names];
   const sideDiagnostics = (side: Side): CurrentFit['diagnostics']['east'] => {
-    const residual = residualSize(side.residual, side.own.times);
+    const residual = residualSize(side.shown, side.own.times);
     const { density } = side.noise[0] as LineNoise;
     return {
       residual,
@@ -119,8 +120,8 @@ function* currentSteps(
     principalAxis: principalAxis(record.east.values, record.north.values),
     covariance: { order, matrix: joint },
     residuals: {
-      east: { ...record.east.series, values: east.residual },
-      north: { ...record.north.series, values: north.residual },
+      east: { ...record.east.series, values: east.shown },
+      north: { ...record.north.series, values: north.shown },
     },
     ...(covariates.columns.length > 0
       ? {
@@ -165,6 +166,8 @@ function scalesOf({ resistant }: Estimate): { east: number; north: number } {
 interface Side {
   readonly own: FitRecord;
   readonly residual: Float64Array;
+  /** As observed. */
+  readonly shown: Float64Array;
   readonly noise: readonly LineNoise[];
   readonly solution: Float64Array;
   readonly covariance: Float64Array;

@@ -40,7 +40,7 @@ export interface PartsSolved {
 }
 
 /** The record that parts add up to. */
-export function summaryOf({ samples, missing, lowest, highest, runs }: FitPartial): RecordSummary {
+function summaryOf({ samples, missing, lowest, highest, runs }: FitPartial): RecordSummary {
   const [first] = runs;
   const last = runs[runs.length - 1];
   if (samples < 2 || !first || !last) {

@@ -159,7 +159,7 @@ export function* unlessKnown(
   const hidden = hiding(problem.selection.taken, times);
   const asked = problem.selection.taken.some(({ name }) => name === SIXTH);
   if (!problem.choosing.ours || !asked || !twiceDaily(times)) return undefined;
-  let where = 'from M2';
+  let how = 'cannot be told from M2';
   if (sixth >= 0) {
     const at = (j: number): number => headCount(design) + 2 * j;
     const { covariance } = yield* turningErrors(found, shares, times, spectral, [1 + sixth]);
@@ -167,9 +167,9 @@ export function* unlessKnown(
     const [solution] = found.solutions as [Float64Array];
     const [a, b] = [solution[at(second)] ?? 0, solution[at(second) + 1] ?? 0];
     if (radius95 <= KNOWN * Math.sqrt(a * a + b * b)) return undefined;
-    where = `to within ${millimetres(radius95)}`;
+    how = `is known to ${millimetres(radius95)} only`;
   }
-  const reason = `hides behind slower tides at high and low waters, where ${SIXTH} cannot be told ${where}`;
+  const reason = `hides behind slower tides at high and low waters, where ${SIXTH} ${how}`;
   return without(
     problem,
     hidden.flatMap(({ name }): Candidate[] =>

@@ -37,9 +37,14 @@ function* settled(
  * @param blocks - Rows.
  * @param whole - Not thinned by the condition: M6 would go before what is less.
  */
-function* begun(problem: Problem, blocks: readonly Rows[]): Generator<Progress, Estimate, void> {
+function* begun(
+  problem: Problem,
+  blocks: readonly Rows[],
+  whole = false,
+): Generator<Progress, Estimate, void> {
   const selection = { ...problem.selection, expected: [] };
-  return yield* estimate({ ...problem, selection }, blocks);
+  const choosing = whole ? { ...problem.choosing, ours: false } : problem.choosing;
+  return yield* estimate({ ...problem, selection, choosing }, blocks);
 }
 
 /** The shares of the two kinds of rows in a fit. */

@@ -1,38 +1,27 @@
 /**
  * Levels without noise by the slow functions, one instant at a time: what a fit must give back.
  */
-import { directPhasors, type DirectModel } from '../../../basis/test/reference/direct-sum.js';
+import { constituent, equilibriumArgument } from '@staithe/constituents';
+import { nodalCorrection } from '@staithe/nodal';
 import type { HarmonicFit } from '../../src/index.js';
 
 /** A constituent of the truth, metres and degrees. */
 export type TrueConstituent = readonly [name: string, amplitude: number, phaseLag: number];
 
-/** The models that a fit takes by default. */
-export const USUAL: DirectModel = {
-  argumentModel: 'iers2010',
-  nodalModel: 'potential',
-  nodalHold: 'continuous',
-};
-
 const RADIANS = Math.PI / 180;
 
-/** The sum of f·H·cos(V + u − G) at an instant, metres. */
-export function madeLevel(
-  truth: readonly TrueConstituent[],
-  model: DirectModel = USUAL,
-): (time: number) => number {
-  const phasors = directPhasors(
-    truth.map(([name]) => name),
-    model,
-  );
-  const pairs = truth.map(([, amplitude, phaseLag]) => [
-    amplitude * Math.cos(phaseLag * RADIANS),
-    amplitude * Math.sin(phaseLag * RADIANS),
-  ]);
+/** The sum of f·H·cos(V + u − G) at an instant, metres, by the models that a fit takes by default. */
+export function madeLevel(truth: readonly TrueConstituent[]): (time: number) => number {
+  const lines = truth.map(([name, amplitude, phaseLag]) => ({
+    of: constituent(name),
+    amplitude,
+    phaseLag,
+  }));
   return (time) =>
-    phasors(time).reduce((sum, [re, im], j) => {
-      const [a, b] = pairs[j] as [number, number];
-      return sum + a * re + b * im;
+    lines.reduce((sum, { of, amplitude, phaseLag }) => {
+      const { f, u } = nodalCorrection(of, time);
+      const angle = equilibriumArgument(of, time) + u - phaseLag;
+      return sum + f * amplitude * Math.cos(angle * RADIANS);
     }, 0);
 }
 
