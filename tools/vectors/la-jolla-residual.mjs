@@ -117,8 +117,12 @@ writeVector({
     'Computed by tools/vectors/la-jolla-residual.mjs from the vector la-jolla-observed (NOAA/NOS/CO-OPS, station 9410230): periodogram of the residuals of nine yearly fits in one row',
   kind: 'open-data',
   unit: 'm^2 (density), m and degrees (constants)',
-  licence: 'Derived from work of the US Government, public domain in the USA; cite NOAA/NOS/CO-OPS.',
-  tolerance: { rel: 0.6, why: 'mean of three bins of a periodogram, each exponentially distributed' },
+  licence:
+    'Derived from work of the US Government, public domain in the USA; cite NOAA/NOS/CO-OPS.',
+  tolerance: {
+    rel: 0.6,
+    why: 'mean of three bins of a periodogram, each exponentially distributed',
+  },
   notes: [
     'A density is the variance of white noise of the same density at one value an hour.',
     `Bins of which the yearly fits took more than a quarter are filled with the mean of ${BESIDE} whole bins on either side, those beyond ${LINE} medians left out. ${SIDE_LINES.join(' and ')}, annual side-lines of M2, are not fitted.`,

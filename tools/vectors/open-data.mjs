@@ -195,11 +195,7 @@ hourlyVector({
   unit: 'm',
 });
 
-const sewells = join(
-  folder,
-  'noaa-8638610-sewells-point-1928-1942',
-  'observed_hourly_m_gmt.csv',
-);
+const sewells = join(folder, 'noaa-8638610-sewells-point-1928-1942', 'observed_hourly_m_gmt.csv');
 const sewellsCells = dailyLayout(sewells);
 const SEWELLS_FITS = {
   1929: { M2: { amplitude: 0.367, phaseLag: 50.1 } },

@@ -11,7 +11,7 @@
 import { degreesToRadians, HOUR, wrapDegrees } from '@staithe/core';
 import { sinCosInto } from '@staithe/core/trig';
 import { exponential, logarithm } from './logarithm.js';
-import { type BinGroup, binsBeside, type LineBins, type NoiseBins } from './noise-bins.js';
+import type { BinGroup, LineBins, NoiseBins } from './noise-bins.js';
 import { studentFactor } from './student.js';
 import { coveredBy, runsOf, type SampleRun } from './window.js';
 
