@@ -1,8 +1,9 @@
 /**
- * A hundred synthetic years at La Jolla, whole and with gaps: how often the truth lies in the 95 % regions of errors from
- * redrawn residuals, by phases and by blocks.
+ * Errors from redrawn residuals on 100 synthetic years, hourly and with gaps: the tide of La Jolla and noise with the spectrum of
+ * its residual. Says what share of the truths lies within the 95 % regions, by phases and by blocks.
  */
 import { fitHarmonics } from '@staithe/fit';
+import { seeded } from '../../packages/fit/src/random.ts';
 import {
   heightsOf,
   laJolla,
@@ -16,63 +17,76 @@ import {
   percent,
   pooled,
 } from '../../packages/fit/test/reference/coverage.ts';
-import { seeded } from '../../packages/fit/src/random.ts';
 import { recordLong } from '../accuracy/long.mjs';
 
-const YEARS = 100;
-const HOURS = 8766;
-const START = Date.UTC(2015, 0, 1);
-const SEED = 20150101;
-const MAIN = 'M2 S2 N2 K2 K1 O1 P1 Q1 Mf Mm Ssa Sa M4 MS4 M6'.split(' ');
-// Percent. A hundred years with a probability of 95 % scatter by 2.2; 6,000 discs, 15 of them alike, by 0.8.
+const START = Date.UTC(2013, 0, 1);
+const YEAR = 8760;
+const YEARS = Number(process.env.YEARS ?? 100);
+const MAIN = 'M2 S2 N2 K1 O1 P1 K2 Q1 M4 MS4 M6 Mf Mm Ssa Sa'.split(' ');
+// Percent. The lines of a year share bins: all together they are some twenty independent ones.
 const POOLED = [93, 97];
 const EACH = [90, 98.5];
-const NOMINAL = 95;
-const vector = 'la-jolla-residual-spectrum';
+const INDEPENDENT = 20;
+const SPREADS = 3;
+// With gaps M2's cusp is steeper than its bins can tell (docs/fitting.md).
+const LEAST_M2 = 85;
 
 const { density, tide } = laJolla();
-const heights = heightsOf(tide, START, HOURS);
+const heights = heightsOf(tide, START, YEAR);
 const findings = [];
+
+/** Percent that chance may take off a share. */
+const spread = (share, trials) => SPREADS * Math.sqrt((share * (100 - share)) / trials);
+
+function judge(words, rows, gaps) {
+  const { disc, interval } = percent(pooled(rows, 'spectrum'));
+  const each = rows
+    .filter(({ name }) => MAIN.includes(name))
+    .map(({ name, spectrum }) => ({ name, share: percent(spectrum).disc }));
+  console.log(
+    `${words}, ${YEARS} years: discs ${disc.toFixed(1)} %, intervals ${interval.toFixed(1)} %`,
+  );
+  console.log(`  ${each.map(({ name, share }) => `${name} ${share.toFixed(0)}`).join('  ')}`);
+  const strict = each.filter(({ share }) => share < EACH[0] || share > EACH[1]);
+  console.log(`  beyond ${EACH.join(' to ')} %: ${strict.map(({ name }) => name).join(' ')}`);
+  for (const share of [disc, interval]) {
+    const chance = spread(95, INDEPENDENT * YEARS);
+    if (!(share > POOLED[0] - chance && share < POOLED[1] + chance)) {
+      findings.push(`${words}: pooled ${share.toFixed(1)} %`);
+    }
+  }
+  for (const { name, share } of each) {
+    const least = gaps && name === 'M2' ? LEAST_M2 : EACH[0];
+    if (!(share > least - spread(least, YEARS))) findings.push(`${words}: ${name} ${share} %`);
+  }
+  recordLong({
+    package: 'fit',
+    vector: 'la-jolla-residual-spectrum',
+    capability: `share of truths outside of 95 % discs from redrawn residuals, ${words}`,
+    compared: `${YEARS} synthetic years; typical is all constituents pooled, worst the worst of ${MAIN.length} main ones; 5 % is right`,
+    cases: YEARS * tide.names.length,
+    worst: Math.max(...each.map(({ share }) => 1 - share / 100)),
+    typical: 1 - disc / 100,
+    tolerance: 0.2,
+    unit: '1',
+  });
+}
 
 for (const gaps of [false, true]) {
   const ways = { phases: emptyCoverage(tide), blocks: emptyCoverage(tide) };
-  const random = seeded(SEED);
-  const noise = noiseOf(density, random);
-  for (let year = 0; year < YEARS; year++) {
-    const whole = recordOf(START, heights, noise.next().value);
-    const record = gaps ? { ...whole, values: withGaps(whole.values, random) } : whole;
+  const noise = noiseOf(density, seeded(20260));
+  const random = seeded(7);
+  for (let i = 0; i < YEARS; i++) {
+    const record = recordOf(START, heights, noise.next().value.subarray(0, YEAR));
+    const values = gaps ? withGaps(record.values, random) : record.values;
     for (const [by, rows] of Object.entries(ways)) {
-      const redraw = { by, seed: 1 + year };
+      const redraw = { by, seed: 1 + i };
       const options = { constituents: tide.names, errorModel: 'redrawn', redraw };
-      count(rows, fitHarmonics(record, options), tide);
+      count(rows, fitHarmonics({ ...record, values }, options), tide);
     }
   }
   for (const [by, rows] of Object.entries(ways)) {
-    const what = `by ${by}, ${gaps ? '10 to 30 % missing' : 'whole years'}`;
-    const all = percent(pooled(rows, 'spectrum'));
-    const each = rows
-      .filter(({ name }) => MAIN.includes(name))
-      .map(({ name, spectrum }) => ({ name, disc: percent(spectrum).disc }));
-    console.log(
-      what,
-      `discs ${all.disc.toFixed(1)} %, amplitudes and lags ${all.interval.toFixed(1)} %`,
-    );
-    console.log('  ', each.map(({ name, disc }) => `${name} ${disc.toFixed(0)}`).join('  '));
-    const outside = ({ disc }, [low, high]) => !(disc >= low && disc <= high);
-    if (outside(all, POOLED)) findings.push(`${what}: pooled ${all.disc}`);
-    for (const one of each)
-      if (outside(one, EACH)) findings.push(`${what}: ${one.name} ${one.disc}`);
-    recordLong({
-      package: 'fit',
-      vector,
-      capability: 'coverage of 95 % regions from redrawn residuals',
-      compared: `${what}, ${YEARS} years of noise; worst of ${MAIN.length} main constituents, typical is all together`,
-      cases: YEARS * tide.names.length,
-      worst: Math.max(...each.map(({ disc }) => Math.abs(disc - NOMINAL))),
-      typical: Math.abs(all.disc - NOMINAL),
-      tolerance: NOMINAL - EACH[0],
-      unit: '%',
-    });
+    judge(`by ${by}, ${gaps ? 'with gaps of 10 to 30 %' : 'hourly'}`, rows, gaps);
   }
 }
 if (findings.length > 0) throw new Error(findings.join('; '));

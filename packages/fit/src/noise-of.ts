@@ -58,7 +58,7 @@ function felt({ weights }: Rows, residual: Float64Array): Float64Array {
 
 const AT_ONCE = 65536; // sample turns between two yields: about a millisecond
 
-/** {@link sumsAt} in slices, so that no step takes long. */
+/** `sumsAt` in slices, so that no step takes long. */
 function* sumsInSlices(
   residual: Residual,
   speeds: Float64Array,

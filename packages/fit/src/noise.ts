@@ -38,7 +38,7 @@ export interface Residual {
 
 /** The noise that a line feels. */
 export interface LineNoise {
-  /** Variance of white noise of the same density, m², times {@link studentFactor}: ±1.96 σ holds 95 %. */
+  /** Variance of white noise of the same density, m², times `studentFactor`: ±1.96 σ holds 95 %. */
   readonly density: number;
   /** Independent bins that the density is worth, not a whole number; 0: it is taken as known. */
   readonly bins: number;
@@ -220,7 +220,7 @@ function lowLine(readings: readonly Reading[], speed: number): LineNoise {
 /**
  * The noise of each line from what its bins hold.
  *
- * @param bins - Of {@link binsBeside}.
+ * @param bins - Of `binsBeside`.
  * @param sums - Of {@link sumsAt} at its speeds.
  * @param samples - In the sums.
  * @returns In the order of the lines asked for; no bins where the fit left no evidence near the line.

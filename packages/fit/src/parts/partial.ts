@@ -150,7 +150,7 @@ function* accumulateSteps(plan: FitPlan, chunk: Series): Generator<Progress, Fit
  * @returns Plain JSON, to be merged.
  * @throws InputError of `checkSeries`; `INVALID_DOCUMENT` for a plan that was changed; `CONFLICT`, path `chunk.sampling`.
  * @example
- * accumulate(planFit({ constituents: ['M2'] }), record).samples; // 8760
+ * accumulate(planFit({ constituents: ['M2'] }), record).samples; // 1440
  * @public
  */
 export function accumulate(plan: FitPlan, chunk: Series): FitPartial {
@@ -166,7 +166,7 @@ export function accumulate(plan: FitPlan, chunk: Series): FitPartial {
  * @returns The same; rejects with `signal.reason` after an abort.
  * @throws As there, by rejection.
  * @example
- * (await accumulateAsync(planFit({ constituents: ['M2'] }), record)).samples; // 8760
+ * (await accumulateAsync(planFit({ constituents: ['M2'] }), record)).samples; // 1440
  * @public
  */
 export function accumulateAsync(
@@ -195,9 +195,9 @@ const least = (a: number | null, b: number | null): number | null =>
  * @throws InputError `CONFLICT` for parts of two plans, or that overlap.
  * @example
  * const plan = planFit({ constituents: ['M2'] });
- * const [first, rest] = [{ ...record, values: record.values.slice(0, 5000) },
- *   { start: record.start + 5000 * record.step, step: record.step, values: record.values.slice(5000) }];
- * mergePartials(accumulate(plan, rest), accumulate(plan, first)).samples; // 8760
+ * const [first, rest] = [{ ...record, values: record.values.slice(0, 700) },
+ *   { start: record.start + 700 * record.step, step: record.step, values: record.values.slice(700) }];
+ * mergePartials(accumulate(plan, rest), accumulate(plan, first)).samples; // 1440
  * @public
  */
 export function mergePartials(a: FitPartial, b: FitPartial): FitPartial {
