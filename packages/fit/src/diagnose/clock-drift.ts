@@ -25,6 +25,7 @@ import { whiteOf } from '../noise-of.js';
 import { pose, type Problem } from '../problem.js';
 import { checkKeys, readCurve, readRedraw } from '../read-options.js';
 import { type FitRecord, readRecord } from '../record.js';
+import { trusted } from '../resistant.js';
 import { type Rows, rowsOf } from '../rows.js';
 import { cholesky, inverseGram, type Scaled, scaleGram, solveScaled } from '../solve.js';
 import type { FitOptions } from '../types.js';
@@ -141,7 +142,9 @@ function* steps(series: Series, options: FitOptions): Generator<Progress, ClockD
     });
   }
   const second = again(problem, first, record);
-  const { weights } = first.blocks[0] as Rows;
+  // What is doubted weighs little: put back by its neighbours it would show a drift smaller than it is.
+  const trust = first.resistant?.shown;
+  const { weights } = trust ? trusted(rows, trust) : rows;
   const sides = [record.values, ...drifting.map(({ values }) => values)];
   const found = yield* estimate(second, [{ ...rows, weights, sides }]);
   const names = found.solved.selection.taken.map(({ name }) => name);
